@@ -1,0 +1,1 @@
+"""Formulas of motor protection: arrays in, arrays out, no spreadsheet in sight."""
