@@ -1,1 +1,1 @@
-"""Formulas of motor protection: arrays in, arrays out, no spreadsheet in sight."""
+"""Formulas of motor protection: arrays in, arrays out; one subject a file, numpy only."""

@@ -1,0 +1,65 @@
+"""Values of the cells through python-calamine, after everything that could harm it was ruled out."""
+
+from __future__ import annotations
+
+import io
+from collections.abc import Collection
+from dataclasses import dataclass
+from pathlib import Path
+
+from python_calamine import CalamineError, CalamineWorkbook, SheetTypeEnum, SheetVisibleEnum
+
+from audit.intake.cells import CellValue
+from audit.intake.opening.kinds import damaged, encrypted
+
+__all__ = ["RawSheet", "read_sheets"]
+
+
+@dataclass(frozen=True)
+class RawSheet:
+    """A sheet as the reader gives it; blanks are None."""
+
+    name: str
+    rows: list[list[CellValue]]
+    hidden: bool
+    merged: tuple[tuple[int, int, int, int], ...]
+
+
+def read_sheets(path: Path, data: bytes, skip: Collection[str] = ()) -> list[RawSheet]:
+    """Worksheets of a workbook in their order, without those to skip and without chart sheets."""
+    try:
+        return _read_sheets(data, skip)
+    except CalamineError as error:
+        if "password" in str(error).lower():
+            raise encrypted(path) from error
+        raise damaged(path, str(error)) from error
+    except BaseException as error:
+        # a panic of the reader arrives as an exception outside Exception that cannot be imported by name
+        if type(error).__name__ != "PanicException":
+            raise
+        raise damaged(path, "its content contradicts itself") from error
+
+
+def _read_sheets(data: bytes, skip: Collection[str]) -> list[RawSheet]:
+    sheets = []
+    with CalamineWorkbook.from_filelike(io.BytesIO(data)) as workbook:
+        for metadata in workbook.sheets_metadata:
+            if metadata.typ != SheetTypeEnum.WorkSheet or metadata.name in skip:
+                continue
+            sheet = workbook.get_sheet_by_name(metadata.name)
+            rows: list[list[CellValue]] = [
+                [None if value == "" else value for value in row]
+                for row in sheet.to_python(skip_empty_area=False)
+            ]
+            sheets.append(
+                RawSheet(
+                    name=metadata.name,
+                    rows=rows,
+                    hidden=metadata.visible != SheetVisibleEnum.Visible,
+                    merged=tuple(
+                        (first[0] + 1, first[1] + 1, last[0] + 1, last[1] + 1)
+                        for first, last in sheet.merged_cell_ranges or ()
+                    ),
+                )
+            )
+    return sheets

@@ -1,0 +1,29 @@
+"""Which files of a folder are workbooks to read."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+from audit.intake.opening.kinds import WORKBOOK_SUFFIXES
+
+SUFFIXES = WORKBOOK_SUFFIXES | {".csv", ".tsv"}
+LOCK_BEGINNINGS = ("~$", ".~lock.")
+
+
+def find_workbooks(folder: Path) -> list[Path]:
+    """Workbooks of a folder by name, without its sub-folders, hidden files and lock files.
+
+    A path to a file gives that file alone.
+    """
+    if folder.is_file():
+        return [folder]
+    return sorted(
+        (
+            entry
+            for entry in folder.iterdir()
+            if entry.suffix.lower() in SUFFIXES
+            and not entry.name.startswith((".", *LOCK_BEGINNINGS))
+            and entry.is_file()
+        ),
+        key=lambda entry: (entry.name.casefold(), entry.name),
+    )
