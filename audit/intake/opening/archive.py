@@ -69,7 +69,14 @@ class SafeArchive:
                 while piece := part.read(CHUNK_BYTES):
                     total += len(piece)
                     yield piece
-        except (zipfile.BadZipFile, zlib.error, EOFError, OSError, RuntimeError, NotImplementedError) as error:
+        except (
+            zipfile.BadZipFile,
+            zlib.error,
+            EOFError,
+            OSError,
+            RuntimeError,
+            NotImplementedError,
+        ) as error:
             raise damaged(self.path, f"part {name}: {error}") from error
         if total != info.file_size:
             raise damaged(self.path, f"part {name} is shorter than it says")

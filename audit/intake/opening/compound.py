@@ -46,7 +46,9 @@ class CompoundFile:
                 self._root = (start, size)
             else:
                 self._entries.setdefault(name, (0, 0))
-        self._mini_table = self._numbers(self._chain(mini_start)) if mini_start < LARGEST_SECTOR_NUMBER else ()
+        self._mini_table = (
+            self._numbers(self._chain(mini_start)) if mini_start < LARGEST_SECTOR_NUMBER else ()
+        )
 
     @property
     def names(self) -> frozenset[str]:

@@ -91,7 +91,10 @@ def _kind_of_archive(path: Path, data: bytes) -> FileKind:
             if "mimetype" in names and archive.getinfo("mimetype").file_size < 200:
                 mimetype = archive.read("mimetype")
             manifest = b""
-            if "META-INF/manifest.xml" in names and archive.getinfo("META-INF/manifest.xml").file_size < 2**20:
+            if (
+                "META-INF/manifest.xml" in names
+                and archive.getinfo("META-INF/manifest.xml").file_size < 2**20
+            ):
                 manifest = archive.read("META-INF/manifest.xml")
     except (zipfile.BadZipFile, zipfile.LargeZipFile, EOFError, ValueError, RuntimeError, OSError) as error:
         raise damaged(path, str(error)) from error
@@ -113,7 +116,10 @@ def _kind_of_archive(path: Path, data: bytes) -> FileKind:
     if not names:
         raise UnreadableWorkbook(path, "this is an empty archive", EXPECTED, "Ask for the file again.")
     raise UnreadableWorkbook(
-        path, "this is an archive of files, not a workbook", EXPECTED, "Unpack it and give the workbook in it."
+        path,
+        "this is an archive of files, not a workbook",
+        EXPECTED,
+        "Unpack it and give the workbook in it.",
     )
 
 

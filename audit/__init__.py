@@ -1,0 +1,1 @@
+"""Audit of the motor-protection settings of a whole site."""

@@ -1,0 +1,1 @@
+"""The fleet: columns with values, bases and cells; tables per subject; links between them."""

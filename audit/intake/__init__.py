@@ -1,0 +1,1 @@
+"""From workbooks to readings: open, find headers, read cells, resolve."""
