@@ -75,3 +75,55 @@ def look_up(words: ArrayLike, table: Mapping[str, float]) -> Floats:
     for word, figure in table.items():
         found = np.where(text == word.lower(), figure, found)
     return found
+
+
+def together(*values: ArrayLike) -> list[Floats]:
+    """The values as float64 arrays of one common shape.
+
+    Examples
+    --------
+    >>> [part.tolist() for part in together([1, 2], 3)]
+    [[1.0, 2.0], [3.0, 3.0]]
+    """
+    return [np.array(part) for part in np.broadcast_arrays(*(floats(value) for value in values))]
+
+
+def present(*values: Floats) -> NDArray[np.bool_]:
+    """Where none of the values is missing.
+
+    Examples
+    --------
+    >>> present(floats([1, None, 3]), floats([1, 2, None])).tolist()
+    [True, False, False]
+    """
+    known = ~np.isnan(values[0])
+    for value in values[1:]:
+        known = known & ~np.isnan(value)
+    return known
+
+
+def entry_at(table: ArrayLike, codes: ArrayLike) -> Floats:
+    """The table's entry at each whole-number code, counted from zero; missing for a code the table has not.
+
+    Examples
+    --------
+    >>> entry_at([10, 20], [0, 1, -1, 2, 0.5]).tolist()
+    [10.0, 20.0, nan, nan, nan]
+    """
+    entries, places = floats(table), floats(codes)
+    known = (places >= 0) & (places < len(entries)) & (places == np.floor(places))
+    return np.append(entries, np.nan)[np.where(known, places, len(entries)).astype(np.int64)]
+
+
+def code_of(name: str, codes: Mapping[str, int], subject: str) -> int:
+    """The code that a name stands for, whatever its case; a name without one is refused.
+
+    Examples
+    --------
+    >>> code_of("10A", {"10": 0, "10a": 1}, "a trip class")
+    1
+    """
+    found = codes.get(" ".join(name.casefold().split()))
+    if found is None:
+        raise ValueError(f"{name!r} is not {subject}. Accepted: {', '.join(codes)}.")
+    return found

@@ -3,18 +3,19 @@
 from __future__ import annotations
 
 import numpy as np
+from numpy.typing import ArrayLike
 
-from audit.engineering._arrays import Floats, Values, floats, present
+from audit.engineering.arrays import Floats, present, together
 from audit.engineering.unit_factors import SQRT3
 
 
-def _weight(constant: float, locked_rotor_multiple: Values) -> Floats:
-    (multiple,) = floats(locked_rotor_multiple)
+def _weight(constant: float, locked_rotor_multiple: ArrayLike) -> Floats:
+    (multiple,) = together(locked_rotor_multiple)
     with np.errstate(divide="ignore", invalid="ignore"):
         return np.where(multiple > 0, constant / multiple**2, np.nan)
 
 
-def typical_unbalance_weight(locked_rotor_multiple: Values) -> Floats:
+def typical_unbalance_weight(locked_rotor_multiple: ArrayLike) -> Floats:
     """Weight of negative-sequence current in the rotor's heat, usual estimate.
 
     q = 175 / ILR^2, ILR in multiples of full-load current
@@ -48,7 +49,7 @@ def typical_unbalance_weight(locked_rotor_multiple: Values) -> Floats:
     return _weight(175.0, locked_rotor_multiple)
 
 
-def conservative_unbalance_weight(locked_rotor_multiple: Values) -> Floats:
+def conservative_unbalance_weight(locked_rotor_multiple: ArrayLike) -> Floats:
     """Weight of negative-sequence current in the rotor's heat, estimate on the safe side.
 
     q = 230 / ILR^2, ILR in multiples of full-load current
@@ -82,7 +83,7 @@ def conservative_unbalance_weight(locked_rotor_multiple: Values) -> Floats:
 
 
 def equivalent_current_a(
-    positive_sequence_a: Values, negative_sequence_a: Values, unbalance_weight: Values
+    positive_sequence_a: ArrayLike, negative_sequence_a: ArrayLike, unbalance_weight: ArrayLike
 ) -> Floats:
     """Balanced current that heats the motor as much as the unbalanced one.
 
@@ -118,13 +119,13 @@ def equivalent_current_a(
     ----------
     IEEE C37.96 and Blackburn and Domin, Protective Relaying, motor chapter.
     """
-    positive, negative, weight = floats(positive_sequence_a, negative_sequence_a, unbalance_weight)
+    positive, negative, weight = together(positive_sequence_a, negative_sequence_a, unbalance_weight)
     usable = present(positive, negative, weight) & (positive >= 0) & (negative >= 0) & (weight >= 0)
     with np.errstate(invalid="ignore"):
         return np.where(usable, np.sqrt(positive**2 + weight * negative**2), np.nan)
 
 
-def open_phase_line_current_a(load_current_a: Values) -> Floats:
+def open_phase_line_current_a(load_current_a: ArrayLike) -> Floats:
     """Current in the two sound lines when one line opens and the motor keeps its load.
 
     I = sqrt(3) * Iload
@@ -156,11 +157,11 @@ def open_phase_line_current_a(load_current_a: Values) -> Floats:
     ----------
     Equal power on one phase-to-phase voltage; common practice.
     """
-    (load,) = floats(load_current_a)
+    (load,) = together(load_current_a)
     return np.where(load >= 0, SQRT3 * load, np.nan)
 
 
-def open_phase_sequence_current_a(line_current_a: Values) -> Floats:
+def open_phase_sequence_current_a(line_current_a: ArrayLike) -> Floats:
     """Positive- and negative-sequence current (they are equal) when one line is open.
 
     I1 = I2 = I / sqrt(3)
@@ -190,11 +191,11 @@ def open_phase_sequence_current_a(line_current_a: Values) -> Floats:
     ----------
     Symmetrical components of an open phase, as in Blackburn and Domin, Protective Relaying.
     """
-    (line,) = floats(line_current_a)
+    (line,) = together(line_current_a)
     return np.where(line >= 0, line / SQRT3, np.nan)
 
 
-def open_phase_equivalent_current_a(line_current_a: Values, unbalance_weight: Values) -> Floats:
+def open_phase_equivalent_current_a(line_current_a: ArrayLike, unbalance_weight: ArrayLike) -> Floats:
     """Balanced current that heats the motor as much as running on two lines.
 
     Ieq = I * sqrt((1 + q) / 3)
@@ -231,7 +232,7 @@ def open_phase_equivalent_current_a(line_current_a: Values, unbalance_weight: Va
 
 
 def unbalance_heating_time_s(
-    negative_sequence_a: Values, full_load_a: Values, heating_limit_s: Values
+    negative_sequence_a: ArrayLike, full_load_a: ArrayLike, heating_limit_s: ArrayLike
 ) -> Floats:
     """Time until negative-sequence current, an open phase above all, has used up the rotor's heat reserve.
 
@@ -268,10 +269,10 @@ def unbalance_heating_time_s(
 
     References
     ----------
-    Form I2^2 t = K as in Blackburn and Domin, Protective Relaying; the figure of 40 s is common practice, from
-    memory.
+    Form I2^2 t = K as in Blackburn and Domin, Protective Relaying; the figure of 40 s is common practice,
+    from memory.
     """
-    negative, full_load, limit = floats(negative_sequence_a, full_load_a, heating_limit_s)
+    negative, full_load, limit = together(negative_sequence_a, full_load_a, heating_limit_s)
     usable = present(negative, full_load, limit) & (negative >= 0) & (full_load > 0) & (limit > 0)
     with np.errstate(divide="ignore", invalid="ignore"):
         return np.where(usable, limit / (negative / full_load) ** 2, np.nan)
