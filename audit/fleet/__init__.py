@@ -1,1 +1,1 @@
-"""The fleet: columns with values, bases and cells; tables per subject; links between them."""
+"""Tables of motors, relays, buses, starts and groups; columns whose values carry basis and cell."""
