@@ -22,9 +22,7 @@ from audit.intake.opening.kinds import damaged
 CHUNK_BYTES = 4 * MEGABYTE
 MARKUP_SUFFIXES = (".xml", ".rels", ".vml")
 FORBIDDEN = ("<!DOCTYPE", "<!ENTITY")
-FORBIDDEN_BYTES = tuple(
-    word.encode(codec) for word in FORBIDDEN for codec in ("ascii", "utf-16-le", "utf-16-be")
-)
+FORBIDDEN_BYTES = tuple(word.encode(codec) for word in FORBIDDEN for codec in ("ascii", "utf-16-le", "utf-16-be"))
 OVERLAP_BYTES = max(len(word) for word in FORBIDDEN_BYTES)
 TRAP_ADVICE = "Do not open it before its sender has explained it; ask for a plain copy of the workbook."
 
@@ -139,7 +137,7 @@ class SafeArchive:
             raise UnreadableWorkbook(
                 self.path,
                 found,
-                f"at most {MAXIMUM_PART_BYTES // MEGABYTE} MB a part, {MAXIMUM_UNPACKED_BYTES // MEGABYTE} MB "
-                f"in all, {SUSPECT_RATIO} times a large part's size",
+                f"at most {MAXIMUM_PART_BYTES // MEGABYTE} MB a part, {MAXIMUM_UNPACKED_BYTES // MEGABYTE} "
+                f"MB in all, {SUSPECT_RATIO} times a large part's size",
                 TRAP_ADVICE,
             )

@@ -48,8 +48,7 @@ def _read_sheets(data: bytes, skip: Collection[str]) -> list[RawSheet]:
                 continue
             sheet = workbook.get_sheet_by_name(metadata.name)
             rows: list[list[CellValue]] = [
-                [None if value == "" else value for value in row]
-                for row in sheet.to_python(skip_empty_area=False)
+                [None if value == "" else value for value in row] for row in sheet.to_python(skip_empty_area=False)
             ]
             sheets.append(
                 RawSheet(

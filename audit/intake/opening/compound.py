@@ -13,7 +13,7 @@ ENTRY_BYTES = 128
 STREAM = 2
 
 
-class DamagedCompoundFile(ValueError):  # noqa: N818 - says what is wrong with the file
+class DamagedCompoundFile(ValueError):
     """A compound file whose own tables do not lead to its directory."""
 
 
@@ -46,9 +46,7 @@ class CompoundFile:
                 self._root = (start, size)
             else:
                 self._entries.setdefault(name, (0, 0))
-        self._mini_table = (
-            self._numbers(self._chain(mini_start)) if mini_start < LARGEST_SECTOR_NUMBER else ()
-        )
+        self._mini_table = self._numbers(self._chain(mini_start)) if mini_start < LARGEST_SECTOR_NUMBER else ()
 
     @property
     def names(self) -> frozenset[str]:
@@ -96,7 +94,7 @@ class CompoundFile:
         return tuple(table)
 
     def _chain(self, number: int) -> bytes:
-        pieces = []
+        pieces: list[bytes] = []
         limit = len(self._table)
         while number < LARGEST_SECTOR_NUMBER:
             if number >= len(self._table) or len(pieces) > limit:

@@ -50,15 +50,11 @@ class SheetGrid:
         """Values of a column from `first_row` to `last_row`, both counted from 1 and included."""
         return [row[column - 1] for row in self.rows[first_row - 1 : last_row]]
 
-    def percent_in_column(
-        self, column: int, first_row: int = 1, last_row: int | None = None
-    ) -> NDArray[np.bool_]:
+    def percent_in_column(self, column: int, first_row: int = 1, last_row: int | None = None) -> NDArray[np.bool_]:
         """Tell per cell of `column(...)` whether it is shown as a percentage (0.85 shown as 85 %)."""
         return self._marked(self.percent_cells, column, first_row, last_row)
 
-    def struck_in_column(
-        self, column: int, first_row: int = 1, last_row: int | None = None
-    ) -> NDArray[np.bool_]:
+    def struck_in_column(self, column: int, first_row: int = 1, last_row: int | None = None) -> NDArray[np.bool_]:
         """Tell per cell of `column(...)` whether its text is struck through as a whole."""
         return self._marked(self.struck_cells, column, first_row, last_row)
 
@@ -82,7 +78,7 @@ class WorkbookGrids:
     remarks: tuple[str, ...] = ()
 
 
-class UnreadableWorkbook(Exception):  # noqa: N818 - the name says what is wrong, as the message does
+class UnreadableWorkbook(Exception):
     """A file that cannot be read, or that it would not be safe to read."""
 
     def __init__(self, path: Path, found: str, expected: str, advice: str) -> None:

@@ -91,10 +91,7 @@ def _kind_of_archive(path: Path, data: bytes) -> FileKind:
             if "mimetype" in names and archive.getinfo("mimetype").file_size < 200:
                 mimetype = archive.read("mimetype")
             manifest = b""
-            if (
-                "META-INF/manifest.xml" in names
-                and archive.getinfo("META-INF/manifest.xml").file_size < 2**20
-            ):
+            if "META-INF/manifest.xml" in names and archive.getinfo("META-INF/manifest.xml").file_size < 2**20:
                 manifest = archive.read("META-INF/manifest.xml")
     except (zipfile.BadZipFile, zipfile.LargeZipFile, EOFError, ValueError, RuntimeError, OSError) as error:
         raise damaged(path, str(error)) from error

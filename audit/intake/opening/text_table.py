@@ -12,15 +12,14 @@ from collections import Counter
 from pathlib import Path
 
 from audit.intake.cells import CellValue
+from audit.intake.celltext.numerals import NUMERAL, find_decimal_comma
 from audit.intake.opening.bounds import MAXIMUM_GRID_CELLS
 from audit.intake.opening.grids import SheetGrid, UnreadableWorkbook
 
 SEPARATORS = {";": "semicolon", ",": "comma", "\t": "tabulator", "|": "vertical bar"}
 SAMPLE_ROWS = 200
 SEPARATOR_LINE = re.compile(r"\Asep=(.)\r?\n", re.IGNORECASE)
-COMMA_DECIMAL = re.compile(r"[-+]?(?:\d+|\d{1,3}(?:\.\d{3})+),\d+\s*%?")
-POINT_DECIMAL = re.compile(r"[-+]?(?:\d+|\d{1,3}(?:,\d{3})+)\.\d+\s*%?")
-THREE_DIGITS = re.compile(r"[-+]?[1-9]\d{0,2}[.,]\d{3}\s*%?")
+A_NUMBER = re.compile(rf"\s*[-+]?{NUMERAL}\s*%?\s*")
 
 
 def read_text_table(path: Path, data: bytes) -> tuple[SheetGrid, tuple[str, ...]]:
@@ -121,17 +120,5 @@ def _rows(path: Path, text: str, separator: str) -> list[list[CellValue]]:
 
 def _decimal_comma(rows: list[list[CellValue]]) -> bool | None:
     """Decimal mark of the file; None where its numbers do not tell, or contradict each other."""
-    commas = points = 0
-    for row in rows[:5000]:
-        for cell in row:
-            if not isinstance(cell, str) or THREE_DIGITS.fullmatch(cell):
-                continue
-            if COMMA_DECIMAL.fullmatch(cell):
-                commas += 1
-            elif POINT_DECIMAL.fullmatch(cell):
-                points += 1
-    if commas and not points:
-        return True
-    if points and not commas:
-        return False
-    return None
+    numerals = (cell for row in rows[:5000] for cell in row if isinstance(cell, str) and A_NUMBER.fullmatch(cell))
+    return find_decimal_comma(numerals)

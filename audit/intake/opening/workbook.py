@@ -24,8 +24,7 @@ def open_workbook(path: Path) -> WorkbookGrids:
     if kind in (FileKind.XLSX, FileKind.XLSB, FileKind.ODS):
         SafeArchive(path, data).check_markup()
     sheets = [
-        SheetGrid(sheet.name, sheet.rows, hidden=sheet.hidden, merged=sheet.merged)
-        for sheet in read_sheets(path, data)
+        SheetGrid(sheet.name, sheet.rows, hidden=sheet.hidden, merged=sheet.merged) for sheet in read_sheets(path, data)
     ]
     return WorkbookGrids(path, digest, sheets)
 
