@@ -15,7 +15,10 @@ X_TO_R_LOW_VOLTAGE_GROUP = 1 / 0.42
 
 
 def motor_fault_contribution_ka(
-    locked_rotor_a: ArrayLike, rated_voltage_v: ArrayLike, system_voltage_v: ArrayLike, voltage_factor_pu: ArrayLike
+    locked_rotor_a: ArrayLike,
+    rated_voltage_v: ArrayLike,
+    system_voltage_v: ArrayLike,
+    voltage_factor_pu: ArrayLike,
 ) -> Floats:
     """Initial symmetrical current that a motor feeds into a three-phase fault at its terminals.
 
@@ -35,7 +38,7 @@ def motor_fault_contribution_ka(
     Returns
     -------
     ndarray
-        Initial symmetrical contribution, rms; missing where an input is missing or a voltage not positive. [kA]
+        Initial symmetrical contribution, rms; missing where an input is missing, a voltage not positive. [kA]
 
     Notes
     -----
@@ -95,8 +98,7 @@ def motor_x_to_r_ratio(rated_power_kw: ArrayLike, rated_voltage_v: ArrayLike, po
     """
     power_per_pair = above_zero(rated_power_kw) / (above_zero(poles) / 2)
     voltage = above_zero(rated_voltage_v)
-    medium_voltage = np.where(
-        power_per_pair >= LARGE_MOTOR_KW_PER_POLE_PAIR, X_TO_R_MEDIUM_VOLTAGE_LARGE, X_TO_R_MEDIUM_VOLTAGE_SMALL
-    )
+    large = power_per_pair >= LARGE_MOTOR_KW_PER_POLE_PAIR
+    medium_voltage = np.where(large, X_TO_R_MEDIUM_VOLTAGE_LARGE, X_TO_R_MEDIUM_VOLTAGE_SMALL)
     figure = np.where(voltage <= LOW_VOLTAGE_ENDS_V, X_TO_R_LOW_VOLTAGE_GROUP, medium_voltage)
     return np.where(np.isnan(power_per_pair + voltage), np.nan, figure)

@@ -8,6 +8,7 @@ from numpy.typing import ArrayLike
 from audit.engineering.arrays import Floats, above_zero, floats, zero_or_more
 
 NEWTON_STEPS = 12
+LEAST_X_TO_R = 1e-6
 
 
 def offset_rms_ratio(x_to_r_ratio: ArrayLike, cycles: ArrayLike) -> Floats:
@@ -151,22 +152,16 @@ def offset_first_peak_ratio(x_to_r_ratio: ArrayLike) -> Floats:
     ----------
     Differential equation of the R-L circuit.
     """
-    x_to_r = zero_or_more(x_to_r_ratio)
+    # a hair above zero: 1 / (X/R) must stay finite, and so little reactance leaves no offset to see
+    x_to_r = np.maximum(zero_or_more(x_to_r_ratio), LEAST_X_TO_R)
     phase = np.arctan(x_to_r)
     angle = phase + np.pi / 2
-    with np.errstate(divide="ignore"):
-        rate = 1 / x_to_r
-        for _ in range(NEWTON_STEPS):
-            # At X/R 0 the rate is infinite and its product with a vanishing exponential undefined: no offset left.
-            offset = np.cos(phase) * np.exp(-angle * rate)
-            slope = np.cos(angle - phase) - offset
-            bend = -np.sin(angle - phase) + np.where(np.isinf(rate), 0.0, _finite(rate) * offset)
-            angle = angle - slope / bend
-        return floats(np.sqrt(2) * (np.sin(angle - phase) + np.sin(phase) * np.exp(-angle * rate)))
-
-
-def _finite(values: Floats) -> Floats:
-    return np.where(np.isinf(values), 0.0, values)
+    for _ in range(NEWTON_STEPS):
+        offset = np.cos(phase) * np.exp(-angle / x_to_r)
+        slope = np.cos(angle - phase) - offset
+        bend = offset / x_to_r - np.sin(angle - phase)
+        angle = angle - slope / bend
+    return floats(np.sqrt(2) * (np.sin(angle - phase) + np.sin(phase) * np.exp(-angle / x_to_r)))
 
 
 def x_to_r_from_offset_rms_ratio(offset_rms_ratio: ArrayLike, cycles: ArrayLike) -> Floats:
