@@ -176,6 +176,13 @@ def _join(operator: str, parts: list[Value]) -> Value:
     return Value("truth", outcome.astype(np.int8), np.where(settled, deciding, weakest).astype(np.int8))
 
 
+def _handed_over(value: Value) -> NDArray[Any]:
+    """Give a function numbers for numbers and truths, and words for choices."""
+    if value.sort == "choice":
+        return np.asarray(np.array([*value.choices, ""], dtype=str)[value.values])
+    return np.asarray(value.values, dtype=float)
+
+
 def _call(name: str, operands: tuple[Node, ...], scope: Scope) -> Value:
     function = scope.functions[name]
     if function.of_rows:
@@ -188,7 +195,7 @@ def _call(name: str, operands: tuple[Node, ...], scope: Scope) -> Value:
     missing = np.zeros(size, dtype=bool)
     for value in given:
         missing = missing | value.missing()
-    arrays = [np.broadcast_to(value.values.astype(float), size) for value in given]
+    arrays = [np.broadcast_to(_handed_over(value), size) for value in given]
     with np.errstate(all="ignore"):
         result = np.array(function.call(*arrays), dtype=float)
     result[missing] = np.nan

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
+from itertools import pairwise
 from typing import Literal
 
 import numpy as np
@@ -123,11 +124,9 @@ class Fleet:
             return np.arange(self.rows(subject), dtype=np.int64)
         for chain in self.paths(subject, home):
             rows = np.arange(self.rows(subject), dtype=np.int64)
-            for child, parent in zip(chain, chain[1:], strict=False):
-                link = self.links[(child, parent)]
-                rows = (
-                    np.where(rows >= 0, link[np.maximum(rows, 0)], NO_ROW) if len(link) else np.full(len(rows), NO_ROW)
-                )
+            for child, parent in pairwise(chain):
+                # the row added behind the last one catches NO_ROW, also where the parent table is empty
+                rows = np.append(self.links[(child, parent)], NO_ROW)[rows]
             return rows
         return None
 

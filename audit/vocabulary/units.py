@@ -40,7 +40,9 @@ class Unit:
         """Give the unit of the difference of two points of this scale."""
         if not self.point:
             return self
-        return next(u for u in UNITS.values() if u.exponents == self.exponents and not u.point and u.scale == self.scale)
+        return next(
+            u for u in UNITS.values() if u.exponents == self.exponents and not u.point and u.scale == self.scale
+        )
 
 
 def _composed(scale: float, exponents: tuple[int, ...]) -> Unit:
@@ -79,6 +81,7 @@ UNITS: dict[str, Unit] = {
     "per_hour": _unit("an hour", 1 / 3600, s=-1),
     "k": _unit("K", 1.0, k=1),
     "c": Unit("°C", 1.0, (0, 0, 0, 1, 0, 0), point=True),
+    "ohm_per_km": _unit("ohm/km", 1e-3, a=-1, v=1, m=-1),
     "m": _unit("m", 1.0, m=1),
     "mm2": _unit("mm²", 1e-6, m=2),
     "kgm2": _unit("kg m²", 1.0, kg=1, m=2),

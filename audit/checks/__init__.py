@@ -1,0 +1,1 @@
+"""Declared checks: entries, catalogue, verdicts, permissible ranges and worked cases."""

@@ -1,0 +1,1 @@
+"""Named limits with unit and source, and what a site puts in their place."""
