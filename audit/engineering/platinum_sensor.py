@@ -14,6 +14,8 @@ BELOW_ZERO = -4.183e-12
 COLDEST_C = -200.0
 HOTTEST_C = 850.0
 NEWTON_STEPS = 8
+PRINTED_TO_OHM = 0.005
+"""Half the last place of the printed table, so that its own ends are accepted."""
 TOLERANCE_AT_ZERO_K = {"AA": 0.10, "A": 0.15, "B": 0.30, "C": 0.60}
 TOLERANCE_SLOPE = {"AA": 0.0017, "A": 0.002, "B": 0.005, "C": 0.01}
 
@@ -64,7 +66,7 @@ def platinum_temperature_c(resistance_ohm: ArrayLike) -> Floats:
     Returns
     -------
     ndarray
-        Temperature; missing outside 18.52 to 390.48 ohm or where the input is missing. [C]
+        Temperature; missing outside 18.52 to 390.48 ohm (as printed) or where the input is missing. [C]
 
     Notes
     -----
@@ -82,7 +84,7 @@ def platinum_temperature_c(resistance_ohm: ArrayLike) -> Floats:
     IEC 60751.
     """
     ends = _resistance(np.array([COLDEST_C, HOTTEST_C]))
-    resistance = within(resistance_ohm, ends[0], ends[1])
+    resistance = within(resistance_ohm, ends[0] - PRINTED_TO_OHM, ends[1] + PRINTED_TO_OHM)
     share = resistance / RESISTANCE_AT_ZERO_OHM
     temperature = (-LINEAR + np.sqrt(LINEAR**2 - 4 * SQUARE * (1 - share))) / (2 * SQUARE)
     for _ in range(NEWTON_STEPS):

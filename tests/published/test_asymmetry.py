@@ -1,0 +1,61 @@
+"""Offset, peak and motor contribution against published values (R-L circuit theory, IEC 60909-0, IEEE C37.13)."""
+
+from __future__ import annotations
+
+from math import sqrt
+
+import pytest
+
+from audit.engineering.motor_contribution import motor_fault_contribution_ka, motor_x_to_r_ratio
+from audit.engineering.offset_current import (
+    offset_first_peak_ratio,
+    offset_peak_half_cycle_ratio,
+    offset_rms_half_cycle_ratio,
+    offset_rms_ratio,
+    x_to_r_from_offset_rms_ratio,
+    x_to_r_from_power_factor_ratio,
+    x_to_r_from_time_constant_ratio,
+)
+from audit.engineering.peak_short_circuit import short_circuit_peak_ratio
+from audit.engineering.rated_point import full_load_from_power_a
+from tests.published.rows import Row, cases_of, unclaimed, value_of
+
+NAME = "03-asymmetry"
+
+
+def motor_contribution(
+    rated_power_kw, rated_voltage_v, efficiency_pct, power_factor, locked_rotor_multiple, voltage_factor_pu
+):
+    full_load = full_load_from_power_a(rated_power_kw, rated_voltage_v, efficiency_pct, power_factor)
+    return motor_fault_contribution_ka(
+        locked_rotor_multiple * full_load, rated_voltage_v, rated_voltage_v, voltage_factor_pu
+    )
+
+
+FORMULAS = {
+    "rms factor half a cycle after closing": offset_rms_half_cycle_ratio,
+    "current half a cycle after closing over symmetrical rms": offset_peak_half_cycle_ratio,
+    "first peak over symmetrical rms, closing at voltage zero": offset_first_peak_ratio,
+    "peak factor kappa": short_circuit_peak_ratio,
+    "rms factor some cycles after closing": offset_rms_ratio,
+    "X/R that gives an rms factor": x_to_r_from_offset_rms_ratio,
+    "peak factor kappa of a motor": lambda **motor: short_circuit_peak_ratio(motor_x_to_r_ratio(**motor)),
+    "current half a cycle after closing, by time constant": lambda **circuit: offset_peak_half_cycle_ratio(
+        x_to_r_from_time_constant_ratio(**circuit)
+    ),
+    "current half a cycle after closing, by power factor": lambda power_factor: offset_peak_half_cycle_ratio(
+        x_to_r_from_power_factor_ratio(power_factor)
+    ),
+    "peak factor kappa times sqrt(2), by power factor": lambda power_factor: sqrt(2)
+    * short_circuit_peak_ratio(x_to_r_from_power_factor_ratio(power_factor)),
+    "motor contribution (kA)": motor_contribution,
+}
+
+
+@pytest.mark.parametrize("row", cases_of(NAME, FORMULAS))
+def test_published_value_is_reproduced(row: Row):
+    assert value_of(row, FORMULAS) == row.allowed()
+
+
+def test_every_row_is_claimed():
+    assert unclaimed(NAME, FORMULAS) == set()
