@@ -42,6 +42,10 @@ class Workings:
         """Give the view that expressions of a subject have."""
         return SubjectScope(self, subject)
 
+    def preset(self, name: str, column: Column) -> None:
+        """Put a column in place of what a recipe would give, as worked cases and suppositions do."""
+        self._columns[name] = column
+
     def home_column(self, name: str) -> Column:
         """Give a quantity in its home table, derived if need be."""
         if name not in self._columns:

@@ -1,0 +1,106 @@
+"""Run worked cases through the real evaluator: a small fleet is made of what a case gives."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+from typing import Any
+
+import numpy as np
+
+from audit.checks.catalogue import Catalogue
+from audit.checks.entry import Case, Check
+from audit.checks.verdicts import VERDICT_NAMES, evaluate_check
+from audit.derivation.workings import Workings
+from audit.expression.units import nearest
+from audit.fleet.build import column_of, fleet_of
+from audit.fleet.column import NO_ROW
+from audit.fleet.fleet import Fleet, Table
+from audit.limits.limits import BadRule
+
+_KEYS = ("motor", "motors", "starts", "bus", "group")
+
+
+@dataclass(frozen=True, slots=True)
+class CaseResult:
+    """What a worked case gave, beside what it must give."""
+
+    check: Check
+    case: Case
+    found: str
+
+    def holds(self) -> bool:
+        """Tell whether the case gives what it says."""
+        return self.found == self.case.gives
+
+
+def run_cases(catalogue: Catalogue) -> list[CaseResult]:
+    """Run every worked case of every check."""
+    return [
+        run_case(catalogue, check, case) for check in catalogue.checks if check.stage == "rows" for case in check.cases
+    ]
+
+
+def run_case(catalogue: Catalogue, check: Check, case: Case) -> CaseResult:
+    """Run one worked case."""
+    workings = case_workings(catalogue, check, case)
+    outcome = evaluate_check(check, workings)
+    found = VERDICT_NAMES[int(outcome.verdict[0])] if len(outcome.verdict) else "no row"
+    return CaseResult(check, case, found)
+
+
+def case_workings(catalogue: Catalogue, check: Check, case: Case) -> Workings:
+    """Make the fleet of a case, with the derived quantities that it gives put in place of their recipes."""
+    unknown = sorted(set(case.given) - set(_KEYS))
+    if unknown:
+        raise BadRule(check.file, check.name, f"'{unknown[0]}' is not a key of a case{nearest(unknown[0], _KEYS)}")
+    motors: list[Mapping[str, Any]] = list(case.given.get("motors", [case.given.get("motor", {})]))
+    rows: dict[str, list[dict[str, Any]]] = {
+        "motor": [{} for _ in motors],
+        "relay": [{"relay_tag": f"relay {number}"} for number, _ in enumerate(motors)],
+        "bus": [{}],
+        "start": [],
+    }
+    derived: dict[str, dict[int, Any]] = {}
+
+    def put(name: str, value: Any, row: int) -> None:
+        quantity = catalogue.quantities.get(name)
+        if quantity is None:
+            problem = f"a case gives '{name}', which is not a known name{nearest(name, catalogue.quantities)}"
+            raise BadRule(check.file, check.name, problem)
+        at = row if quantity.subject in ("motor", "relay", "start") else 0
+        if quantity.role == "derived":
+            derived.setdefault(name, {})[at] = value
+        else:
+            rows[quantity.subject][at][name] = value
+
+    for row, given in enumerate(motors):
+        for name, value in given.items():
+            put(name, value, row)
+    for name, value in {**case.given.get("bus", {}), **case.given.get("group", {})}.items():
+        put(name, value, 0)
+    for row, given in enumerate(case.given.get("starts", [])):
+        rows["start"].append({})
+        for name, value in given.items():
+            put(name, value, row)
+    fleet = _with_one_group(fleet_of(rows["motor"], rows["relay"], rows["bus"], rows["start"]), len(motors))
+    workings = Workings(fleet, catalogue.quantities, catalogue.recipes, catalogue.limits, catalogue.functions)
+    for name, values in derived.items():
+        quantity = catalogue.quantities[name]
+        size = fleet.rows(quantity.subject)
+        workings.preset(name, column_of(quantity, [values.get(row) for row in range(size)]))
+    return workings
+
+
+def _with_one_group(fleet: Fleet, motors: int) -> Fleet:
+    everyone = np.zeros(motors, dtype=np.int64)
+    tables = {**fleet.tables, "sisters": Table("sisters", ("group",), {}), "peers": Table("peers", ("group",), {})}
+    starts = np.where(fleet.links["start", "motor"] == NO_ROW, 0, fleet.links["start", "motor"])
+    links = {
+        **fleet.links,
+        ("motor", "sisters"): everyone,
+        ("motor", "peers"): everyone,
+        ("motor", "bus"): everyone,
+        ("start", "motor"): starts,
+    }
+    return replace(fleet, tables=tables, links=links)
