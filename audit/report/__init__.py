@@ -1,0 +1,1 @@
+"""What a run hands over: terminal, record, charts, workbook."""

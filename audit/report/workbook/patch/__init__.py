@@ -1,0 +1,25 @@
+"""A copy of the user's workbook, marked without loss: only the parts that must change are written anew."""
+
+from audit.report.workbook.patch.annotate import (
+    AnnotationOutcome,
+    Mark,
+    annotate_copy,
+    is_our_output,
+    names_for_report,
+    our_sheet_names,
+)
+from audit.report.workbook.patch.refusal import CannotPatch
+from audit.report.workbook.patch.text import escape_text, storable_text, strip_our_note
+
+__all__ = [
+    "AnnotationOutcome",
+    "CannotPatch",
+    "Mark",
+    "annotate_copy",
+    "escape_text",
+    "is_our_output",
+    "names_for_report",
+    "our_sheet_names",
+    "storable_text",
+    "strip_our_note",
+]
