@@ -99,6 +99,39 @@ def terminal_three_phase_fault_a(
     return floats(above_zero(voltage_v) / (SQRT3 * np.hypot(resistance, reactance)))
 
 
+def phase_to_phase_fault_a(three_phase_fault_a: ArrayLike) -> Floats:
+    """Phase-to-phase fault current where the three-phase fault current is known.
+
+    I = sqrt(3)/2 * I3
+
+    Parameters
+    ----------
+    three_phase_fault_a : array_like
+        Three-phase fault current at the same place. [A]
+
+    Returns
+    -------
+    ndarray
+        Fault current; missing where the input is missing or negative. [A]
+
+    Notes
+    -----
+    Negative-sequence impedance equal to the positive: far from generators.
+
+    Examples
+    --------
+    10 kA. By hand: 8660 A.
+
+    >>> phase_to_phase_fault_a(10000).round(0).item()
+    8660.0
+
+    References
+    ----------
+    IEC 60909-0, line-to-line short circuit.
+    """
+    return floats(SQRT3 / 2 * zero_or_more(three_phase_fault_a))
+
+
 def least_phase_to_phase_fault_a(
     bus_minimum_fault_ka: ArrayLike,
     bus_x_to_r_ratio: ArrayLike,
@@ -164,7 +197,7 @@ def least_phase_to_phase_fault_a(
     three_phase = terminal_three_phase_fault_a(
         bus_minimum_fault_ka, bus_x_to_r_ratio, voltage_v, resistance, reactance
     )
-    return floats(SQRT3 / 2 * three_phase)
+    return phase_to_phase_fault_a(three_phase)
 
 
 def greatest_three_phase_fault_a(
