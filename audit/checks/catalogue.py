@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from pathlib import Path
 from typing import Any
 
@@ -42,6 +42,8 @@ class Catalogue:
     quantities: Mapping[str, Quantity]
     functions: Functions
     changes: tuple[SiteChange, ...] = ()
+    pack_evidence: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
+    """For each pack the quantities whose presence in a fleet brings it into scope."""
 
     def packs(self) -> tuple[str, ...]:
         """Give the names of the packs, core first."""
@@ -60,9 +62,13 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
     checks: list[Check] = []
     for path in sorted(folder.glob("*.toml")):
         if path.name != "limits.toml":
-            checks += _read_checks(path, CORE)
+            checks += _read_checks(path, CORE, read_rule_file(path))
+    evidence: dict[str, tuple[str, ...]] = {}
     for path in sorted((folder / "packs").glob("*.toml")):
-        checks += _read_checks(path, path.stem.replace("-", " "))
+        pack = path.stem.replace("-", " ")
+        entries = read_rule_file(path)
+        evidence[pack] = tuple(entries.pop("in_scope_with", ()))
+        checks += _read_checks(path, pack, entries)
     changes: list[SiteChange] = []
     if site_rules is not None:
         limits, checks, changes = _site(site_rules, limits, checks)
@@ -77,12 +83,16 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
     check_recipes(recipes, meanings, FUNCTIONS)
     for check in checks:
         _check_names_and_units(check, meanings, quantities, checks)
-    return Catalogue(tuple(checks), recipes, limits, quantities, FUNCTIONS, tuple(changes))
+    for pack, names in evidence.items():
+        for name in names:
+            if name not in quantities:
+                raise BadRule(pack, "in_scope_with", f"'{name}' is not a known name{nearest(name, quantities)}")
+    return Catalogue(tuple(checks), recipes, limits, quantities, FUNCTIONS, tuple(changes), evidence)
 
 
-def _read_checks(path: Path, pack: str) -> list[Check]:
+def _read_checks(path: Path, pack: str, entries: Mapping[str, Any]) -> list[Check]:
     found: list[Check] = []
-    for name, entry in read_rule_file(path).items():
+    for name, entry in entries.items():
         found += read_entry(path, name, entry, pack)
     return found
 

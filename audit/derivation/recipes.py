@@ -16,6 +16,8 @@ from audit.limits.limits import BadRule, Limit, read_rule_file
 from audit.vocabulary.quantities import Quantity
 from audit.vocabulary.units import UNITS, unit_named, unit_of_ending
 
+AUDIT_DATE = "audited_on_date"
+"""The day of the audit, for the ages of exports, studies and tests."""
 BASES = {"recorded": RECORDED, "stated": STATED, "calculated": CALCULATED, "assumed": ASSUMED}
 SUBJECTS = ("motor", "relay", "bus", "start", "sisters", "peers")
 _KEYS = {"subject", "label", "unit", "kind", "source", "ask", "note", "choices", *BASES}
@@ -107,6 +109,7 @@ def read_recipes(folders: list[Path]) -> tuple[dict[str, Recipe], dict[str, Quan
 def lookup_for(quantities: Mapping[str, Quantity], limits: Mapping[str, Limit]) -> Mapping[str, Meaning]:
     """Give what each name that an expression may use stands for."""
     meanings = {name: Meaning("number", limit.unit) for name, limit in limits.items()}
+    meanings[AUDIT_DATE] = Meaning("number", unit_named("date"))
     for name, quantity in quantities.items():
         sort = "number" if quantity.kind in ("number", "date") else quantity.kind
         meanings[name] = Meaning(sort, quantity.unit, quantity.choices)

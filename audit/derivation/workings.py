@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field
+from datetime import date
 
 import numpy as np
 
-from audit.derivation.recipes import Recipe
+from audit.derivation.recipes import AUDIT_DATE, Recipe
 from audit.expression.functions import Function, Functions
 from audit.expression.lacking import lacking
 from audit.expression.values import UNKNOWN, YES, Value, evaluate
@@ -17,6 +18,7 @@ from audit.limits.limits import Limit
 from audit.vocabulary.quantities import Quantity
 
 Mask = np.ndarray[tuple[int, ...], np.dtype[np.bool_]]
+EPOCH = date(1970, 1, 1)
 CHILD_OF = {"motor": "start", "bus": "motor", "sisters": "motor", "peers": "motor", "relay": "motor"}
 
 
@@ -34,6 +36,7 @@ class Workings:
     recipes: Mapping[str, Recipe]
     limits: Mapping[str, Limit]
     functions: Functions
+    audited_on: date = field(default_factory=date.today)
     _columns: dict[str, Column] = field(default_factory=dict)
     _views: dict[tuple[str, str], Column] = field(default_factory=dict)
     _lacks: dict[str, dict[str, Mask]] = field(default_factory=dict)
@@ -168,6 +171,9 @@ class SubjectScope:
         limit = self.workings.limits.get(name)
         if limit is not None:
             return Value("number", np.array([limit.value]), np.zeros(1, dtype=np.int8))
+        if name == AUDIT_DATE:
+            today = float((self.workings.audited_on - EPOCH).days)
+            return Value("number", np.array([today]), np.zeros(1, dtype=np.int8))
         return _as_value(self.workings.column(self.subject, name))
 
     def over_rows(self, function: Function, names: tuple[str, ...]) -> Value:

@@ -1,0 +1,60 @@
+"""Everything that one audit found, before anything is rendered."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from datetime import date
+
+from audit.checks.catalogue import Catalogue
+from audit.checks.entry import SEVERITIES
+from audit.checks.ranges import SettingRange
+from audit.checks.verdicts import VERDICT_NAMES, Outcome
+from audit.derivation.workings import Workings
+from audit.findings.collect import DatumWanted, UnprovenGroup
+from audit.findings.finding import FindingCode
+from audit.fleet.fleet import Fleet
+
+
+@dataclass(frozen=True)
+class Audit:
+    """The outcome of an audit: verdicts, ranges, findings by code, and what is lacking."""
+
+    fleet: Fleet
+    catalogue: Catalogue
+    workings: Workings
+    outcomes: tuple[Outcome, ...]
+    ranges: Mapping[str, SettingRange]
+    codes: tuple[FindingCode, ...]
+    unproven: tuple[UnprovenGroup, ...]
+    data_to_collect: tuple[DatumWanted, ...]
+    packs_in_scope: tuple[str, ...]
+    packs_out_of_scope: tuple[str, ...]
+    audited_on: date
+
+    def counts(self) -> dict[str, int]:
+        """Count verdicts over all checks."""
+        totals = dict.fromkeys(VERDICT_NAMES, 0)
+        for outcome in self.outcomes:
+            for name, number in outcome.counts().items():
+                totals[name] += number
+        return totals
+
+    def provisional(self) -> int:
+        """Count the verdicts that rest on an assumption."""
+        return sum(int(outcome.provisional.sum()) for outcome in self.outcomes)
+
+    def without_evidence(self) -> int:
+        """Count the pairs that are not applicable because no evidence was given."""
+        return sum(int(outcome.no_evidence.sum()) for outcome in self.outcomes)
+
+    def by_severity(self) -> dict[str, int]:
+        """Count the findings of each severity."""
+        counts: dict[str, int] = {severity: 0 for severity in SEVERITIES}
+        for code in self.codes:
+            counts[self.outcomes[code.outcome].check.severity] += 1
+        return counts
+
+    def check_names(self) -> tuple[str, ...]:
+        """Give the names of the checks applied, each once."""
+        return tuple(dict.fromkeys(outcome.check.name for outcome in self.outcomes))

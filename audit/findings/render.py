@@ -1,0 +1,362 @@
+"""Render a finding from its code: present value, permissible range, reason with numbers, cells, assumptions."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+import numpy as np
+
+from audit.checks.entry import Check, Requirement
+from audit.checks.ranges import NO_CHECK, SettingRange
+from audit.checks.verdicts import Outcome
+from audit.derivation.trace import Step, Trace, shown_number
+from audit.derivation.workings import CHILD_OF
+from audit.expression.nodes import Call, Name, Node, walk
+from audit.expression.text import plain_number, render
+from audit.findings.audit import Audit
+from audit.findings.finding import Finding, FindingCell, FindingCode
+from audit.fleet.column import NO_CELL
+from audit.vocabulary.quantities import Quantity
+from audit.vocabulary.units import DIMENSIONLESS, Unit
+
+_BOUND_WORDS = {
+    "at_least": "at least",
+    "above": "above",
+    "at_most": "at most",
+    "below": "below",
+    "equals": "equal to",
+}
+
+
+@dataclass(frozen=True, slots=True)
+class _Place:
+    motor: str
+    service: str
+    relay: str
+    bus: str
+    cubicle: str
+
+
+class FindingRenderer:
+    """Renders the findings of one audit."""
+
+    def __init__(self, audit: Audit) -> None:
+        self.audit = audit
+        self.trace = Trace(audit.workings)
+
+    def all(self) -> Iterator[Finding]:
+        """Render every finding, in order."""
+        for code in self.audit.codes:
+            yield self.finding(code)
+
+    def finding(self, code: FindingCode) -> Finding:
+        """Render one finding."""
+        outcome = self.audit.outcomes[code.outcome]
+        if outcome.check.stage == "ranges":
+            return self._conflict(code, outcome.check)
+        return self._breach(code, outcome)
+
+    def _breach(self, code: FindingCode, outcome: Outcome) -> Finding:
+        check = outcome.check
+        judged = outcome.judged[code.requirement]
+        requirement = judged.requirement
+        deciding = int(judged.deciding[code.row]) if judged.deciding is not None else -1
+        motor_row = self._motor_row(check.subject, code.row, deciding)
+        setting = requirement.setting() or ""
+        quantity = self.audit.workings.quantities.get(setting)
+        unit = self._unit(requirement)
+        band = self.audit.ranges.get(setting) if check.subject == "motor" else None
+        low, high, low_by, high_by, state = self._band(band, code)
+        steps = list(self._steps(check, requirement, code.row, deciding))
+        place = self._place(motor_row, check.subject, code.row)
+        present, present_text = self._present(requirement, code, quantity, unit)
+        return Finding(
+            key=self._key(check, place.motor or self._name(check.subject, code.row), setting, code.group),
+            subject=check.subject,
+            name=self._name(check.subject, code.row),
+            motor=place.motor,
+            service=place.service,
+            relay=place.relay,
+            bus=place.bus,
+            cubicle=place.cubicle,
+            function=check.function,
+            check=check.key,
+            pack=check.pack,
+            severity=check.severity,
+            says=check.says,
+            judges=setting,
+            label=self._label(requirement, quantity),
+            present=present,
+            present_text=present_text,
+            unit=unit.symbol,
+            low=low,
+            high=high,
+            range_text=range_text(low, high, unit),
+            low_set_by=low_by,
+            high_set_by=high_by,
+            range_state=state,
+            margin_pct=margin_pct(code.present, low, high),
+            because=self._because(requirement, code, check, present_text, unit),
+            why=check.why,
+            remedy=check.remedy,
+            source=check.source,
+            cells=self._cells(steps),
+            assumptions=tuple(dict.fromkeys(step.note for step in steps if step.note)),
+            provisional=bool(outcome.provisional[code.row]),
+            setting_group=code.group,
+        )
+
+    def _conflict(self, code: FindingCode, check: Check) -> Finding:
+        band = list(self.audit.ranges.values())[code.requirement]
+        quantity = self.audit.workings.quantities[band.setting]
+        unit = quantity.unit or DIMENSIONLESS
+        place = self._place(code.row, "motor", code.row)
+        low_by, high_by = self._set_by(band, code.row)
+        low, high = shown_number(code.low, quantity), shown_number(code.high, quantity)
+        column = self.audit.workings.column("motor", band.setting)
+        present = float(column.values[code.row])
+        because = f"{low_by} wants at least {low}, {high_by} wants at most {high}: no value satisfies both"
+        return Finding(
+            key=self._key(check, place.motor, band.setting, ""),
+            subject="motor",
+            name=place.motor,
+            motor=place.motor,
+            service=place.service,
+            relay=place.relay,
+            bus=place.bus,
+            cubicle=place.cubicle,
+            function=quantity.function or check.function,
+            check=check.key,
+            pack=check.pack,
+            severity=check.severity,
+            says=check.says,
+            judges=band.setting,
+            label=quantity.label,
+            present=None if present != present else present,
+            present_text="not known" if present != present else shown_number(present, quantity),
+            unit=unit.symbol,
+            low=code.low,
+            high=code.high,
+            range_text="none",
+            low_set_by=low_by,
+            high_set_by=high_by,
+            range_state="conflict",
+            margin_pct=None,
+            because=because,
+            why=check.why,
+            remedy=check.remedy,
+            source=check.source,
+            cells=self._cells(list(self.trace.steps(Name(band.setting), "motor", code.row))),
+            assumptions=(),
+            provisional=False,
+            setting_group="",
+        )
+
+    def _key(self, check: Check, name: str, setting: str, group: str) -> str:
+        parts = [name, check.key, setting] if not group else [name, check.key, setting, f"group {group}"]
+        return "|".join(parts)
+
+    def _name(self, subject: str, row: int) -> str:
+        return self.audit.fleet.tables[subject].keys[row]
+
+    def _motor_row(self, subject: str, row: int, deciding: int) -> int:
+        if subject == "motor":
+            return row
+        if deciding >= 0 and CHILD_OF.get(subject) == "motor":
+            return deciding
+        if subject == "relay":
+            rows = self.audit.fleet.parent_rows("relay", "motor")
+            return int(rows[row]) if rows is not None and len(rows) else -1
+        return -1
+
+    def _place(self, motor_row: int, subject: str, row: int) -> _Place:
+        fleet, workings = self.audit.fleet, self.audit.workings
+        bus = self._name("bus", row) if subject == "bus" else ""
+        relay = self._name("relay", row) if subject == "relay" else ""
+        if motor_row < 0:
+            return _Place("", "", relay, bus, "")
+        relays = fleet.parent_rows("motor", "relay")
+        if relays is not None and len(relays) and relays[motor_row] >= 0:
+            relay = relay or fleet.tables["relay"].keys[int(relays[motor_row])]
+        texts = {}
+        for name in ("service", "bus", "cubicle"):
+            value = workings.column("motor", name).values[motor_row]
+            texts[name] = str(value) if value is not None else ""
+        return _Place(
+            fleet.tables["motor"].keys[motor_row], texts["service"], relay, bus or texts["bus"], texts["cubicle"]
+        )
+
+    def _unit(self, requirement: Requirement) -> Unit:
+        if isinstance(requirement.judged, Name):
+            quantity = self.audit.workings.quantities.get(requirement.judged.name)
+            if quantity is not None and quantity.unit is not None:
+                return quantity.unit
+        return self._unit_of_expression(requirement.judged)
+
+    def _unit_of_expression(self, node: Node | None) -> Unit:
+        if isinstance(node, Call):
+            function = self.audit.workings.functions[node.function]
+            if function.returns.unit is not None:
+                return function.returns.unit
+        return DIMENSIONLESS
+
+    def _label(self, requirement: Requirement, quantity: Quantity | None) -> str:
+        if quantity is not None:
+            return quantity.label
+        node = requirement.judged or requirement.bound
+        assert node is not None
+        return render(node, self.trace.label_of, self._reads)
+
+    def _reads(self, function: str) -> str:
+        return self.audit.workings.functions[function].reads or function.replace("_", " ")
+
+    def _present(
+        self, requirement: Requirement, code: FindingCode, quantity: Quantity | None, unit: Unit
+    ) -> tuple[float | bool | str | None, str]:
+        subject = self.audit.outcomes[code.outcome].check.subject
+        if requirement.kind == "must_be":
+            on = code.present > 0
+            return on, "on" if on else "off"
+        if quantity is not None and quantity.kind != "number":
+            text = self.trace.text_of(subject, code.row, quantity.name)
+            return text, text
+        if code.present != code.present:
+            return None, ""
+        if quantity is not None and quantity.kind == "number":
+            return code.present, shown_number(code.present, quantity)
+        return code.present, _with_unit(code.present, unit)
+
+    def _band(self, band: SettingRange | None, code: FindingCode) -> tuple[float | None, float | None, str, str, str]:
+        if band is None or not band.bounded()[code.row]:
+            return _known(code.low), _known(code.high), "", "", ""
+        low_by, high_by = self._set_by(band, code.row)
+        low, high = _known(float(band.low[code.row])), _known(float(band.high[code.row]))
+        state = [
+            word
+            for word, flag in (
+                ("provisional", band.provisional),
+                ("moving", band.moving),
+                ("conflict", band.conflict()),
+            )
+            if flag[code.row]
+        ]
+        # an observation bound is no end of the range: show the band that it prefers
+        if not _outside(code.present, low, high):
+            low = code.low if code.low == code.low else low
+            high = code.high if code.high == code.high else high
+        return low, high, low_by, high_by, ", ".join(state)
+
+    def _set_by(self, band: SettingRange, row: int) -> tuple[str, str]:
+        names = []
+        for ends in (band.low_check, band.high_check):
+            number = int(ends[row])
+            names.append("" if number == NO_CHECK else self.audit.outcomes[number].check.key)
+        return names[0], names[1]
+
+    def _because(self, requirement: Requirement, code: FindingCode, check: Check, present_text: str, unit: Unit) -> str:
+        label = self._label(requirement, self.audit.workings.quantities.get(requirement.setting() or ""))
+        if requirement.kind == "must_be":
+            return f"{label} is {present_text}, wanted is {requirement.text}"
+        if requirement.kind == "must_be_stated":
+            return f"{label} is not stated"
+        assert requirement.bound is not None
+        numbers = self.trace.numbers_in(requirement.bound, check.subject, code.row)
+        if requirement.kind == "requires":
+            return f"wanted: {label}; found: {numbers}"
+        bound = code.low if requirement.kind in ("at_least", "above") else code.high
+        if requirement.kind == "equals":
+            return f"{label} is {present_text}, wanted is {numbers}{_within(code, unit)}"
+        limit = _with_unit(bound, unit)
+        workings = limit if isinstance(requirement.bound, Name) else f"{numbers} = {limit}"
+        judged = self._judged_numbers(requirement, check, code, present_text)
+        return f"{label} {judged}, {_BOUND_WORDS[requirement.kind]} {workings} wanted"
+
+    def _judged_numbers(self, requirement: Requirement, check: Check, code: FindingCode, shown: str) -> str:
+        if requirement.judged is None or isinstance(requirement.judged, Name):
+            return shown
+        return f"{self.trace.numbers_in(requirement.judged, check.subject, code.row)} = {shown}"
+
+    def _steps(self, check: Check, requirement: Requirement, row: int, deciding: int) -> Iterator[Step]:
+        seen: set[tuple[str, int]] = set()
+        child = CHILD_OF.get(check.subject)
+        for node in (requirement.judged, requirement.bound):
+            if node is None:
+                continue
+            if deciding >= 0 and child is not None:
+                for name in _over_rows(node, self.audit):
+                    yield from self.trace.steps(Name(name), child, deciding, seen)
+            yield from self.trace.steps(node, check.subject, row, seen)
+
+    def _cells(self, steps: list[Step]) -> tuple[FindingCell, ...]:
+        cells = []
+        for step in steps:
+            place = self.audit.fleet.book.place(step.cell) if step.cell != NO_CELL else None
+            if place is not None:
+                cells.append(FindingCell(place.file, place.sheet, place.cell, step.name))
+        return tuple(cells)
+
+
+def _over_rows(node: Node, audit: Audit) -> list[str]:
+    return [
+        operand.name
+        for call in walk(node)
+        if isinstance(call, Call) and audit.workings.functions[call.function].of_rows
+        for operand in call.operands
+        if isinstance(operand, Name)
+    ]
+
+
+def _known(value: float) -> float | None:
+    return None if np.isnan(value) else value
+
+
+def _outside(present: float, low: float | None, high: float | None) -> bool:
+    return (low is not None and present < low) or (high is not None and present > high)
+
+
+def _with_unit(value: float, unit: Unit) -> str:
+    text = plain_number(value)
+    return f"{text} {unit.symbol}".strip()
+
+
+def _within(code: FindingCode, unit: Unit) -> str:
+    if code.low != code.low or code.high <= code.low:
+        return ""
+    return f" ({_with_unit(code.low, unit)} to {_with_unit(code.high, unit)})"
+
+
+def range_text(low: float | None, high: float | None, unit: Unit) -> str:
+    """Write a permissible range.
+
+    >>> from audit.vocabulary.units import UNITS
+    >>> range_text(1020.0, None, UNITS["a"]), range_text(None, None, UNITS["a"])
+    ('1,020 A or more', '')
+    """
+    if low is None and high is None:
+        return ""
+    if high is None:
+        return f"{_with_unit(low or 0.0, unit)} or more"
+    if low is None:
+        return f"{_with_unit(high, unit)} or less"
+    if low == high:
+        return _with_unit(low, unit)
+    if low > high:
+        return f"none ({_with_unit(low, unit)} > {_with_unit(high, unit)})"
+    return f"{plain_number(low)} to {_with_unit(high, unit)}"
+
+
+def margin_pct(present: float, low: float | None, high: float | None) -> float | None:
+    """Give the distance to the nearer end in per cent of that end; positive inside the range.
+
+    >>> margin_pct(900.0, 1000.0, None)
+    -10.0
+    """
+    if present != present:
+        return None
+    margins = []
+    if low:
+        margins.append((present - low) / low * 100)
+    if high:
+        margins.append((high - present) / high * 100)
+    return min(margins) if margins else None
