@@ -25,5 +25,9 @@ MAXIMUM_PARTS = 20_000
 MAXIMUM_GRID_CELLS = 16_000_000
 """Cells of the rectangles from A1 to the last used row and column, over all sheets."""
 
+SHEET_ROWS = 1_048_576
+SHEET_COLUMNS = 16_384
+"""Extent of a sheet, ECMA-376."""
+
 MAXIMUM_SHEETS = 1_000
 """Number of sheets."""

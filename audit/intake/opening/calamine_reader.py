@@ -48,7 +48,8 @@ def _read_sheets(data: bytes, skip: Collection[str]) -> list[RawSheet]:
                 continue
             sheet = workbook.get_sheet_by_name(metadata.name)
             rows: list[list[CellValue]] = [
-                [None if value == "" else value for value in row] for row in sheet.to_python(skip_empty_area=False)
+                [None if value == "" else value for value in row] if "" in row else list(row)
+                for row in sheet.to_python(skip_empty_area=False)
             ]
             sheets.append(
                 RawSheet(

@@ -3,13 +3,19 @@
 from __future__ import annotations
 
 import hashlib
+from collections.abc import Callable
+from functools import partial
 from pathlib import Path
 
+from audit.intake.cells import CellValue
 from audit.intake.opening.archive import SafeArchive
 from audit.intake.opening.bounds import MAXIMUM_FILE_BYTES, MEGABYTE
-from audit.intake.opening.calamine_reader import read_sheets
+from audit.intake.opening.calamine_reader import RawSheet, read_sheets
+from audit.intake.opening.facts import SheetFacts, WorkbookFacts, check_extent, united
 from audit.intake.opening.grids import SheetGrid, UnreadableWorkbook, WorkbookGrids
 from audit.intake.opening.kinds import EXPECTED, FileKind, recognise
+from audit.intake.opening.package import read_package
+from audit.intake.opening.sheet_scan import scan_sheet
 from audit.intake.opening.text_table import read_text_table
 
 
@@ -21,12 +27,10 @@ def open_workbook(path: Path) -> WorkbookGrids:
     if kind is FileKind.TEXT:
         grid, remarks = read_text_table(path, data)
         return WorkbookGrids(path, digest, [grid], remarks=remarks)
-    if kind in (FileKind.XLSX, FileKind.XLSB, FileKind.ODS):
-        SafeArchive(path, data).check_markup()
-    sheets = [
-        SheetGrid(sheet.name, sheet.rows, hidden=sheet.hidden, merged=sheet.merged) for sheet in read_sheets(path, data)
-    ]
-    return WorkbookGrids(path, digest, sheets)
+    facts = FACTS_OF_KIND[kind](path, data)
+    check_extent(path, facts.sheets)
+    sheets = [_grid(sheet, facts.sheets.get(sheet.name)) for sheet in read_sheets(path, data, facts.own_sheets)]
+    return WorkbookGrids(path, digest, sheets, facts.date_1904, facts.remarks)
 
 
 def _read_bytes(path: Path) -> bytes:
@@ -47,3 +51,61 @@ def _read_bytes(path: Path) -> bytes:
             EXPECTED,
             "Close it in other programs and check that it exists and that you may read it.",
         ) from error
+
+
+def _xlsx_facts(path: Path, data: bytes) -> WorkbookFacts:
+    archive = SafeArchive(path, data)
+    package = read_package(archive)
+    sheets = {
+        name: scan_sheet(path, name, part, partial(archive.chunks, part), package.formats)
+        for name, part in package.sheets.items()
+        if name not in package.own_sheets
+    }
+    archive.check_the_rest()
+    return WorkbookFacts(sheets, package.date_1904, package.own_sheets)
+
+
+def _other_archive_facts(path: Path, data: bytes) -> WorkbookFacts:
+    SafeArchive(path, data).check_the_rest()
+    return WorkbookFacts({})
+
+
+def _no_facts(path: Path, data: bytes) -> WorkbookFacts:
+    return WorkbookFacts({})
+
+
+FACTS_OF_KIND: dict[FileKind, Callable[[Path, bytes], WorkbookFacts]] = {
+    FileKind.XLSX: _xlsx_facts,
+    FileKind.XLSB: _other_archive_facts,
+    FileKind.ODS: _other_archive_facts,
+    FileKind.XLS: _no_facts,
+}
+
+
+def _grid(sheet: RawSheet, facts: SheetFacts | None) -> SheetGrid:
+    if facts is None:
+        return SheetGrid(sheet.name, sheet.rows, hidden=sheet.hidden, merged=sheet.merged)
+    for (row, column), marker in facts.markers.items():
+        _set(sheet.rows, row, column, marker)
+    return SheetGrid(
+        sheet.name,
+        sheet.rows,
+        hidden=sheet.hidden,
+        hidden_rows=frozenset(facts.hidden_rows),
+        hidden_columns=frozenset(facts.hidden_columns),
+        merged=sheet.merged,
+        percent_cells=united(facts.percent),
+        struck_cells=united(facts.struck),
+        notes=tuple(facts.notes),
+    )
+
+
+def _set(rows: list[list[CellValue]], row: int, column: int, value: CellValue) -> None:
+    """Put a value into a grid, which grows where the reader saw nothing so far out."""
+    width = max(len(rows[0]) if rows else 0, column)
+    if rows and width > len(rows[0]):
+        for cells in rows:
+            cells.extend([None] * (width - len(cells)))
+    while len(rows) < row:
+        rows.append([None] * width)
+    rows[row - 1][column - 1] = value
