@@ -13,13 +13,13 @@ TRIP_CLASS_10A = 10.5
 TRIP_STANDARD_CODES = {"iec": 0, "nema": 1}
 """Whole number that stands for the standard: IEC 60947-4-1 (7.2 times) or NEMA ICS 2 (6 times)."""
 
-# IEC 60947-4-1 Table 2, shortest time from cold at 7.2 times the setting; classes 5 and 40 from memory
-_CLASSES = (5.0, 10.0, 20.0, 30.0, 40.0)
-_LEAST_S = (0.5, 4.0, 6.0, 9.0, 30.0)
+# IEC 60947-4-1 Table 2, shortest time from cold at 7.2 times the setting; class 5 from memory
+_CLASSES = (5.0, 10.0, 20.0, 30.0)
+_LEAST_S = (0.5, 4.0, 6.0, 9.0)
 _LEAST_10A_S = 2.0
 _GREATEST_10A_S = 10.0
-# IEC 60947-4-1 Table 3, from equilibrium at 1.0 at 1.5 times the setting; none known here for class 40
-_WARM_S = (120.0, 240.0, 480.0, 720.0, np.nan)
+# IEC 60947-4-1 Table 3, from equilibrium at 1.0 at 1.5 times the setting
+_WARM_S = (120.0, 240.0, 480.0, 720.0)
 _WARM_10A_S = 120.0
 _IEC_MULTIPLE = 7.2
 _NEMA_MULTIPLE = 6.0
@@ -105,7 +105,7 @@ def trip_class_least_time_s(multiple: ArrayLike, trip_class: ArrayLike, standard
 
     References
     ----------
-    IEC 60947-4-1, Table 2 (classes 5 and 40 from memory); I^2 t and the edge for NEMA are common practice.
+    IEC 60947-4-1, Table 2 (class 5 from memory); I^2 t and the edge for NEMA are common practice.
     """
     current, number, standard_code = together(multiple, trip_class, standard)
     known = entry_at([1.0, 1.0], standard_code)
@@ -138,7 +138,7 @@ def trip_class_greatest_time_s(multiple: ArrayLike, trip_class: ArrayLike, stand
     Notes
     -----
     The standard fixes one point; I^2 t carries it to other currents. A relay with one thermal time constant
-    that trips at 1.2 times or less may take up to 8 % longer at 3 times and 22 % longer at 2 times, so the
+    that trips at 1.2 times or less may take up to 8 % longer at 3 times and 23 % longer at 2 times, so the
     edge is good from about 3 times upward: the range of starting and stalling. Balanced current, reference
     ambient, from cold. A class that the standard does not list is taken as its time in seconds. Missing where
     an input is missing, the standard unknown or the class not above zero.
@@ -152,8 +152,8 @@ def trip_class_greatest_time_s(multiple: ArrayLike, trip_class: ArrayLike, stand
 
     References
     ----------
-    IEC 60947-4-1, Tables 2 and 3; NEMA ICS 2 Part 4 and UL 60947-4-1 (6 times). Class 40 and class 5 from
-    memory; I^2 t is common practice.
+    IEC 60947-4-1, Tables 2 and 3; NEMA ICS 2 Part 4 and UL 60947-4-1 (6 times). Class 5 from memory;
+    I^2 t is common practice.
     """
     current, number, standard_code = together(multiple, trip_class, standard)
     anchor = entry_at([_IEC_MULTIPLE, _NEMA_MULTIPLE], standard_code)
@@ -181,8 +181,8 @@ def trip_class_warm_time_s(trip_class: ArrayLike) -> Floats:
 
     Notes
     -----
-    After thermal equilibrium at 1.0 times the setting. Classes that the standard's table does not list, and
-    class 40 whose figure is not known here, are missing.
+    After thermal equilibrium at 1.0 times the setting. Missing for a class without a figure here (40 among
+    them).
 
     Examples
     --------
