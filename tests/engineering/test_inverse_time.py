@@ -46,7 +46,7 @@ def test_a_falling_start_current_trips_when_the_integral_reaches_one():
     def share(until_s: float) -> float:
         return quad(lambda t: 1 / float(inverse_time_s(6 - 0.1 * t, 1, 5, VERY_INVERSE)), 0, until_s)[0]
 
-    step = 0.001
+    step = 0.01
     middles = np.arange(step / 2, 40, step)
     trip = inverse_time_varying_s(6 - 0.1 * middles, np.full(middles.shape, step), 1, 5, VERY_INVERSE)
     assert share(float(trip)) == pytest.approx(1.0, abs=1e-4)
