@@ -8,6 +8,7 @@ from dataclasses import dataclass, field
 import numpy as np
 import pandas as pd
 
+from audit.refusal import Refusal
 from audit.fleet.addresses import SheetBook
 from audit.fleet.fleet import Complaint, InputFile, Question
 
@@ -61,7 +62,7 @@ class Gathered:
     columns: list[ColumnReading] = field(default_factory=list)
 
 
-class CannotRead(Exception):
+class CannotRead(Refusal):
     """Nothing can be judged: no readable workbook, or no motor list."""
 
     def __init__(self, complaint: Complaint) -> None:
@@ -78,10 +79,9 @@ def readings_frame(columns: Mapping[str, object] | None = None) -> pd.DataFrame:
     given = dict(columns or {})
     rows = max((len(values) for values in given.values() if hasattr(values, "__len__")), default=0)
     defaults: dict[str, object] = {"state": "value", "number": np.nan, "text": None, "cell": -1, "record": 0}
-    frame = pd.DataFrame(
+    return pd.DataFrame(
         {
             name: pd.Series(given.get(name, [defaults.get(name, "")] * rows), dtype=kind)
             for name, kind in READING_COLUMNS.items()
         }
     )
-    return frame

@@ -10,10 +10,11 @@ from pathlib import Path
 from typing import Any
 
 from audit.expression.units import nearest
+from audit.refusal import Refusal
 from audit.vocabulary.units import UNITS, Unit, unit_named, unit_of_ending
 
 
-class BadRule(Exception):
+class BadRule(Refusal):
     """A rule file that is refused: which file, which entry, what is wrong and what to do."""
 
     def __init__(self, file: str, entry: str, problem: str, advice: str = "") -> None:

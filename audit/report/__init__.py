@@ -1,1 +1,1 @@
-"""What a run hands over: terminal, record, charts, workbook."""
+"""Reports: terminal tables, the record, and the annotated workbook."""

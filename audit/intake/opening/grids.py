@@ -8,6 +8,7 @@ from pathlib import Path
 import numpy as np
 from numpy.typing import NDArray
 
+from audit.refusal import Refusal
 from audit.fleet.addresses import pack
 from audit.intake.cells import CellValue
 
@@ -78,7 +79,7 @@ class WorkbookGrids:
     remarks: tuple[str, ...] = ()
 
 
-class UnreadableWorkbook(Exception):
+class UnreadableWorkbook(Refusal):
     """A file that cannot be read, or that it would not be safe to read."""
 
     def __init__(self, path: Path, found: str, expected: str, advice: str) -> None:

@@ -1,0 +1,88 @@
+"""The commands: thin, with the work imported only when a command runs."""
+
+from __future__ import annotations
+
+import sys
+from datetime import date, datetime
+from pathlib import Path
+from typing import Annotated
+
+import typer
+
+from audit.refusal import Refusal
+
+app = typer.Typer(
+    name="motor-audit",
+    help="Audit the motor-protection settings of a whole site over the spreadsheets that hold them.",
+    no_args_is_help=True,
+    add_completion=False,
+    rich_markup_mode=None,
+    pretty_exceptions_enable=False,
+)
+
+FleetPath = Annotated[Path, typer.Argument(metavar="FLEET", help="A folder of workbooks, or one workbook.")]
+OutFolder = Annotated[Path | None, typer.Option("--out", metavar="DIR", help="Where to write; default audit-<site>.")]
+RulesFolder = Annotated[
+    Path | None, typer.Option("--rules", metavar="DIR", help="A folder of the site's own rules and limits.")
+]
+
+
+def _day(text: str | None) -> date | None:
+    if text is None:
+        return None
+    try:
+        return datetime.strptime(text, "%Y-%m-%d").date()
+    except ValueError:
+        raise typer.BadParameter(f"'{text}' is not a day; write it as 2026-11-30") from None
+
+
+@app.command()
+def audit(
+    fleet: FleetPath,
+    out: OutFolder = None,
+    rules: RulesFolder = None,
+    pack: Annotated[list[str] | None, typer.Option("--pack", metavar="NAME", help="Bring a pack into scope.")] = None,
+    fail_on: Annotated[
+        str | None, typer.Option("--fail-on", metavar="SEVERITY", help="Exit 1 on findings at or above a severity.")
+    ] = None,
+    json_out: Annotated[
+        bool, typer.Option("--json", help="Print the record on stdout, and nothing else there.")
+    ] = False,
+    show_all: Annotated[bool, typer.Option("--all", help="Print every finding, also long lists of like ones.")] = False,
+    on: Annotated[str | None, typer.Option("--on", metavar="DAY", help="The day of the audit; default today.")] = None,
+) -> None:
+    """Read a fleet, judge every motor, print the findings and write the record and the annotated workbooks."""
+    from audit.commands.audit import run_audit
+
+    raise typer.Exit(
+        run_audit(
+            fleet, out=out, rules=rules, packs=pack or [], fail_on=fail_on, as_json=json_out, everything=show_all,
+            audited_on=_day(on),
+        )
+    )  # fmt: skip
+
+
+@app.command()
+def checks(
+    name: Annotated[str | None, typer.Argument(metavar="NAME", help="One check in full.")] = None,
+    verify: Annotated[bool, typer.Option("--verify", help="Run every worked case.")] = False,
+    json_out: Annotated[bool, typer.Option("--json", help="Print the catalogue as JSON.")] = False,
+    rules: RulesFolder = None,
+) -> None:
+    """Print the catalogue of checks by function, or one check with its worked cases."""
+    from audit.commands.checks import run_checks
+
+    raise typer.Exit(run_checks(name, verify=verify, as_json=json_out, rules=rules))
+
+
+def main() -> None:
+    """Run the command line; wrong input gives one clear message on stderr and exit 2."""
+    try:
+        app()
+    except (Refusal, OSError) as error:
+        print(f"motor-audit: {error}", file=sys.stderr)
+        raise SystemExit(2) from error
+
+
+if __name__ == "__main__":
+    main()

@@ -1,0 +1,1 @@
+"""The record of an audit: findings.json, findings.csv and the readings."""

@@ -1,0 +1,233 @@
+"""The parts of the record as plain data, one part a function."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from importlib.metadata import PackageNotFoundError, version
+from math import isfinite
+from typing import Any
+
+import numpy as np
+
+from audit.checks.ranges import NO_CHECK
+from audit.findings.audit import Audit
+from audit.findings.finding import Finding
+from audit.findings.render import FindingRenderer
+from audit.report.cautions import CAUTIONS
+
+RECORD_VERSION = 1
+
+
+def tool_version() -> str:
+    """Give the version of the installed tool."""
+    try:
+        return version("motor-audit")
+    except PackageNotFoundError:
+        return "from source"
+
+
+def head(audit: Audit) -> dict[str, Any]:
+    """Give what was audited, when, by which rules, and the counts."""
+    counts = audit.counts()
+    return {
+        "record_version": RECORD_VERSION,
+        "audited_on": audit.audited_on.isoformat(),
+        "tool_version": tool_version(),
+        "fleet": audit.fleet.site,
+        "cautions": list(CAUTIONS),
+        "inputs": [{"file": item.file, "sha256": item.sha256} for item in audit.fleet.inputs],
+        "rules": {
+            "version": tool_version(),
+            "packs": list(audit.packs_in_scope),
+            "packs_out_of_scope": list(audit.packs_out_of_scope),
+            "overrides": [
+                {"kind": c.kind, "name": c.name, "was": c.was, "now": c.now, "reason": c.reason}
+                for c in audit.catalogue.changes
+            ],
+        },
+        "counts": {
+            "motors": audit.fleet.rows("motor"),
+            "checks": len(audit.check_names()),
+            "meets": counts["meets"],
+            "breach": counts["breach"],
+            "unproven": counts["unproven"],
+            "not_applicable": counts["not applicable"],
+            "no_evidence": audit.without_evidence(),
+            "provisional": audit.provisional(),
+            "by_severity": audit.by_severity(),
+        },
+    }
+
+
+def number_or_none(value: float | None) -> float | None:
+    """Give a number that JSON can hold."""
+    return None if value is None or not isfinite(value) else value
+
+
+def finding_part(finding: Finding) -> dict[str, Any]:
+    """Give one finding to the contract of the record."""
+    present = finding.present
+    if isinstance(present, float) and not isinstance(present, bool):
+        present = number_or_none(present)
+    return {
+        "key": finding.key,
+        "subject": finding.subject,
+        "name": finding.name,
+        "motor": finding.motor,
+        "service": finding.service,
+        "relay": finding.relay,
+        "bus": finding.bus,
+        "cubicle": finding.cubicle,
+        "function": finding.function,
+        "check": finding.check,
+        "pack": finding.pack,
+        "severity": finding.severity,
+        "says": finding.says,
+        "judges": finding.judges,
+        "label": finding.label,
+        "present": present,
+        "unit": finding.unit,
+        "low": number_or_none(finding.low),
+        "high": number_or_none(finding.high),
+        "low_set_by": finding.low_set_by,
+        "high_set_by": finding.high_set_by,
+        "range_state": finding.range_state,
+        "margin_pct": None if finding.margin_pct is None else number_or_none(round(finding.margin_pct, 4)),
+        "because": finding.because,
+        "why": finding.why,
+        "remedy": finding.remedy,
+        "source": finding.source,
+        "cells": [{"file": c.file, "sheet": c.sheet, "cell": c.cell, "quantity": c.quantity} for c in finding.cells],
+        "assumptions": list(finding.assumptions),
+        "provisional": finding.provisional,
+        "setting_group": finding.setting_group,
+        "status": finding.status,
+    }
+
+
+def findings(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give the findings one by one."""
+    renderer = FindingRenderer(audit)
+    for finding in renderer.all():
+        yield finding_part(finding)
+
+
+def unproven(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give what is unproven, grouped by check and missing data."""
+    for group in audit.unproven:
+        subject = _subject_of(audit, group.check)
+        keys = audit.fleet.tables[subject].keys
+        yield {
+            "check": group.check,
+            "severity": group.severity,
+            "subject": subject,
+            "lacking": list(group.lacking),
+            "rows": [keys[row] for row in group.rows.tolist()],
+        }
+
+
+def _subject_of(audit: Audit, check_key: str) -> str:
+    return next(outcome.check.subject for outcome in audit.outcomes if outcome.check.key == check_key)
+
+
+def ranges(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give every permissible range with at least one end."""
+    keys = audit.fleet.tables["motor"].keys
+    for band in audit.ranges.values():
+        quantity = audit.workings.quantities[band.setting]
+        present = audit.workings.column("motor", band.setting).values
+        conflict = band.conflict()
+        for row in np.flatnonzero(band.bounded()).tolist():
+            state = [
+                word
+                for word, flag in (
+                    ("provisional", band.provisional),
+                    ("moving", band.moving),
+                    ("conflict", conflict),
+                )
+                if flag[row]
+            ]
+            yield {
+                "motor": keys[row],
+                "setting": band.setting,
+                "unit": quantity.unit.symbol if quantity.unit else "",
+                "present": number_or_none(float(present[row])),
+                "low": number_or_none(float(band.low[row])),
+                "low_set_by": _check_key(audit, int(band.low_check[row])),
+                "high": number_or_none(float(band.high[row])),
+                "high_set_by": _check_key(audit, int(band.high_check[row])),
+                "preferred_low": number_or_none(float(band.preferred_low[row])),
+                "preferred_high": number_or_none(float(band.preferred_high[row])),
+                "state": ", ".join(state),
+            }
+
+
+def _check_key(audit: Audit, number: int) -> str:
+    return "" if number == NO_CHECK else audit.outcomes[number].check.key
+
+
+def data_to_collect(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give the data that would settle most, most urgent first."""
+    for wanted in audit.data_to_collect:
+        keys = audit.fleet.tables[wanted.subject].keys
+        yield {
+            "datum": wanted.datum,
+            "label": wanted.label,
+            "subject": wanted.subject,
+            "verdicts": wanted.verdicts(),
+            "by_severity": dict(wanted.by_severity),
+            "checks": list(wanted.checks),
+            "rows": [keys[row] for row in wanted.rows.tolist()],
+        }
+
+
+def per_check(audit: Audit) -> dict[str, dict[str, Any]]:
+    """Give the four counts of each check, which add up to the rows of its subject."""
+    result: dict[str, dict[str, Any]] = {}
+    for outcome in audit.outcomes:
+        if outcome.check.stage == "ranges":
+            continue
+        counts = outcome.counts()
+        result[outcome.check.key] = {
+            "subject": outcome.check.subject,
+            "pack": outcome.check.pack,
+            "severity": outcome.check.severity,
+            "rows": len(outcome.verdict),
+            "meets": counts["meets"],
+            "breach": counts["breach"],
+            "unproven": counts["unproven"],
+            "not_applicable": counts["not applicable"],
+            "no_evidence": int(outcome.no_evidence.sum()),
+            "provisional": int(outcome.provisional.sum()),
+        }
+    return result
+
+
+def complaints(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give what could not be used of the inputs."""
+    for item in audit.fleet.complaints:
+        yield {
+            "weight": item.weight,
+            "file": item.file,
+            "sheet": item.sheet,
+            "cell": item.cell,
+            "found": item.found,
+            "expected": item.expected,
+            "advice": item.advice,
+            "quantity": item.quantity,
+            "subject": item.subject,
+            "key": item.key,
+        }
+
+
+def questions(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give what the reader did not guess."""
+    for item in audit.fleet.questions:
+        yield {
+            "file": item.file,
+            "sheet": item.sheet,
+            "cell": item.cell,
+            "about": item.about,
+            "ask": item.ask,
+            "answers": list(item.answers),
+        }

@@ -1,0 +1,68 @@
+"""What is lacking, on the terminal: data to collect, complaints and questions about the inputs."""
+
+from __future__ import annotations
+
+from rich.console import Console
+from rich.padding import Padding
+from rich.table import Table
+from rich.text import Text
+
+from audit.checks.entry import SEVERITIES
+from audit.findings.audit import Audit
+from audit.report.terminal.style import LETTER, counted
+
+MOST_DATA = 12
+MOST_COMPLAINTS = 10
+
+
+def print_data_to_collect(audit: Audit, console: Console) -> None:
+    """Print which data would settle most verdicts."""
+    if not audit.data_to_collect:
+        return
+    console.print()
+    console.rule(
+        Text("Data to collect · what would settle most, unsafe checks first", "bold"), align="left", style="default"
+    )
+    table = Table(box=None, pad_edge=False, header_style="italic")
+    table.add_column("datum", overflow="fold", ratio=2)
+    table.add_column("of", justify="right", no_wrap=True)
+    table.add_column("settles", justify="right")
+    for severity in SEVERITIES:
+        table.add_column(LETTER[severity], justify="right")
+    table.add_column("for instance", overflow="fold", ratio=2)
+    for wanted in audit.data_to_collect[:MOST_DATA]:
+        keys = audit.fleet.tables[wanted.subject].keys
+        names = ", ".join(keys[row] for row in wanted.rows[:4].tolist())
+        noun = wanted.subject if wanted.subject in ("motor", "relay", "bus") else "group"
+        counts = [f"{wanted.by_severity[severity] or ''}" for severity in SEVERITIES]
+        more = " …" if len(wanted.rows) > 4 else ""
+        table.add_row(
+            Text(wanted.label), counted(len(wanted.rows), noun), f"{wanted.verdicts():,}", *counts, Text(names + more)
+        )
+    console.print(table)
+    left = len(audit.data_to_collect) - MOST_DATA
+    if left > 0:
+        console.print(f"… and {left} further data, all in the workbook and in findings.json")
+
+
+def print_complaints(audit: Audit, console: Console) -> None:
+    """Print what of the inputs could not be used, worst first, and what is asked."""
+    complaints = sorted(audit.fleet.complaints, key=lambda item: ("stop", "withheld", "remark").index(item.weight))
+    if complaints:
+        console.print()
+        console.rule(
+            Text(f"The inputs · {counted(len(complaints), 'complaint')}", "bold"), align="left", style="default"
+        )
+        for item in complaints[:MOST_COMPLAINTS]:
+            console.print(Padding(Text(item.sentence()), (0, 0, 0, 2)))
+        if len(complaints) > MOST_COMPLAINTS:
+            console.print(f"  … and {len(complaints) - MOST_COMPLAINTS:,} more, all in the workbook's data sheet")
+    if audit.fleet.questions:
+        console.print()
+        title = f"Asked · {counted(len(audit.fleet.questions), 'question')}; the values concerned are withheld"
+        console.rule(Text(title, "bold"), align="left", style="default")
+        for question in audit.fleet.questions[:MOST_COMPLAINTS]:
+            place = " › ".join(part for part in (question.file, question.sheet, question.cell) if part)
+            console.print(Padding(Text(f"{place}: {question.about} {question.ask}".strip()), (0, 0, 0, 2)))
+        if len(audit.fleet.questions) > MOST_COMPLAINTS:
+            console.print(f"  … and {len(audit.fleet.questions) - MOST_COMPLAINTS:,} more, see 'motor-audit columns'")
