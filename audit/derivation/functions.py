@@ -13,9 +13,11 @@ from numpy.typing import NDArray
 from audit.engineering import (
     bus_transfer,
     cable_withstand,
+    charging_current,
     code_letter,
     conductor,
     ct_accuracy,
+    ct_burden,
     ct_false_current,
     earth_fault,
     earth_fault_loop,
@@ -52,13 +54,15 @@ _MODULES: tuple[tuple[ModuleType, tuple[str, ...]], ...] = (
     (conductor, ("cable_resistance_ohm", "cable_reactance_ohm")),
     (
         ct_accuracy,
-        ("actual_accuracy_limit_ratio", "rated_burden_ohm", "standard_burden_ohm", "ct_secondary_voltage_v"),
+        ("actual_accuracy_limit_ratio", "ct_secondary_voltage_v"),
     ),
+    (ct_burden, ("rated_burden_ohm", "standard_burden_ohm")),
     (ct_false_current, ("false_residual_a", "false_differential_a")),
     (
         earth_fault,
-        ("resistor_current_a", "charging_current_a", "cable_capacitance_uf", "winding_unprotected_pct"),
+        ("resistor_current_a", "winding_unprotected_pct"),
     ),
+    (charging_current, ("charging_current_a", "cable_capacitance_uf")),
     (earth_fault_loop, ("least_earth_fault_a",)),
     (insulation_class, ("class_temperature_c", "rise_by_resistance_k")),
     (interrupting_duty, ("interrupting_duty_by_peak_ka",)),
@@ -90,7 +94,10 @@ _MODULES: tuple[tuple[ModuleType, tuple[str, ...]], ...] = (
     ),
     (reduced_voltage, ("star_delta_start_current_a", "autotransformer_line_current_a")),
     (stall, ("stall_time_at_current_s", "stall_time_at_voltage_s")),
-    (start_current, ("start_current_at_voltage_a", "start_current_at_rated_a", "locked_rotor_from_multiple_a")),
+    (
+        start_current,
+        ("start_current_at_voltage_a", "start_current_at_rated_a", "locked_rotor_from_multiple_a"),
+    ),
     (start_limits, ("usual_starts_per_hour",)),
     (
         start_voltage,
@@ -154,7 +161,9 @@ def _with_codes(call: Callable[..., Any], places: Mapping[int, Mapping[str, int]
 def _described(module: ModuleType, name: str) -> Function:
     call = getattr(module, name)
     function = function_from_signature(call, choices=(*_WORDS, *_CODES), returns=_RETURNS.get(name))
-    places = {at: _CODES[operand.name] for at, operand in enumerate(function.operands) if operand.name in _CODES}
+    places = {
+        at: _CODES[operand.name] for at, operand in enumerate(function.operands) if operand.name in _CODES
+    }
     reads = name.rsplit("_", 1)[0].replace("_", " ")
     return replace(function, call=_with_codes(call, places) if places else call, reads=reads)
 

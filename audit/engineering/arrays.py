@@ -27,24 +27,36 @@ def floats(values: ArrayLike) -> Floats:
 
 
 def above_zero(values: ArrayLike) -> Floats:
-    """The values as float64, missing unless greater than zero.
+    """The values as float64, missing unless greater than zero and finite.
 
     Examples
     --------
-    >>> above_zero([2.0, 0.0, -1.0]).tolist()
-    [2.0, nan, nan]
+    >>> above_zero([2.0, 0.0, -1.0, float("inf")]).tolist()
+    [2.0, nan, nan, nan]
     """
     numbers = floats(values)
-    return np.where(numbers > 0, numbers, np.nan)
+    return np.where((numbers > 0) & (numbers < np.inf), numbers, np.nan)
 
 
 def zero_or_more(values: ArrayLike) -> Floats:
-    """The values as float64, missing where negative.
+    """The values as float64, missing where negative or infinite.
 
     Examples
     --------
-    >>> zero_or_more([2.0, 0.0, -1.0]).tolist()
-    [2.0, 0.0, nan]
+    >>> zero_or_more([2.0, 0.0, -1.0, float("inf")]).tolist()
+    [2.0, 0.0, nan, nan]
+    """
+    numbers = floats(values)
+    return np.where((numbers >= 0) & (numbers < np.inf), numbers, np.nan)
+
+
+def zero_to_infinity(values: ArrayLike) -> Floats:
+    """The values as float64, missing where negative: for a ratio whose divisor may vanish, such as X/R.
+
+    Examples
+    --------
+    >>> zero_to_infinity([2.0, -1.0, float("inf")]).tolist()
+    [2.0, nan, inf]
     """
     numbers = floats(values)
     return np.where(numbers >= 0, numbers, np.nan)

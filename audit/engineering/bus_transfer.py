@@ -78,7 +78,8 @@ def transfer_resultant_pu(source_pu: ArrayLike, residual_pu: ArrayLike, angle_de
     ANSI C50.41; NEMA MG 1, 20.34 (from memory).
     """
     source, residual = zero_or_more(source_pu), zero_or_more(residual_pu)
-    square = source**2 + residual**2 - 2 * source * residual * np.cos(np.radians(floats(angle_deg)))
+    angle = np.radians(np.where(np.isfinite(floats(angle_deg)), floats(angle_deg), np.nan))
+    square = source**2 + residual**2 - 2 * source * residual * np.cos(angle)
     return floats(np.sqrt(np.maximum(square, 0.0)))
 
 

@@ -64,9 +64,7 @@ def adiabatic_constant(
     return floats(look_up(material, IEC_CONSTANT) * root)
 
 
-def adiabatic_constant_printed(
-    material: ArrayLike, insulation: ArrayLike, section_mm2: ArrayLike
-) -> Floats:
+def adiabatic_constant_printed(material: ArrayLike, insulation: ArrayLike, section_mm2: ArrayLike) -> Floats:
     """Printed constant k for the insulation of a cable that was fully loaded before the fault.
 
     k = 115 (copper, PVC), 143 (copper, XLPE or EPR), 76 (aluminium, PVC), 94 (aluminium, XLPE or EPR);

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike
 
-from audit.engineering.arrays import Floats, above_zero, floats, zero_or_more
+from audit.engineering.arrays import Floats, above_zero, floats, zero_or_more, zero_to_infinity
 
 NEWTON_STEPS = 12
 LEAST_X_TO_R = 1e-6
@@ -44,7 +44,7 @@ def offset_rms_ratio(x_to_r_ratio: ArrayLike, cycles: ArrayLike) -> Floats:
     ----------
     R-L circuit theory, the basis of the multipliers of IEEE C37.010.
     """
-    x_to_r = zero_or_more(x_to_r_ratio)
+    x_to_r = zero_to_infinity(x_to_r_ratio)
     with np.errstate(divide="ignore", invalid="ignore"):
         decay = np.where(x_to_r == 0, np.inf, 4 * np.pi * zero_or_more(cycles) / x_to_r)
     # a missing number of cycles must stay missing where X/R is 0
@@ -115,7 +115,7 @@ def offset_peak_half_cycle_ratio(x_to_r_ratio: ArrayLike) -> Floats:
     ----------
     R-L circuit theory; the form used with IEEE C37.13 and C37.010.
     """
-    x_to_r = zero_or_more(x_to_r_ratio)
+    x_to_r = zero_to_infinity(x_to_r_ratio)
     with np.errstate(divide="ignore"):
         return floats(np.sqrt(2) * (1 + np.exp(-np.pi / x_to_r)))
 
@@ -153,7 +153,7 @@ def offset_first_peak_ratio(x_to_r_ratio: ArrayLike) -> Floats:
     Differential equation of the R-L circuit.
     """
     # a hair above zero: 1 / (X/R) must stay finite, and so little reactance leaves no offset to see
-    x_to_r = np.maximum(zero_or_more(x_to_r_ratio), LEAST_X_TO_R)
+    x_to_r = np.maximum(zero_to_infinity(x_to_r_ratio), LEAST_X_TO_R)
     phase = np.arctan(x_to_r)
     angle = phase + np.pi / 2
     for _ in range(NEWTON_STEPS):
@@ -179,7 +179,7 @@ def x_to_r_from_offset_rms_ratio(offset_rms_ratio: ArrayLike, cycles: ArrayLike)
     Returns
     -------
     ndarray
-        X/R; infinite at sqrt(3), missing outside 1 to sqrt(3) or where an input is missing. [1]
+        X/R, without bound towards sqrt(3); missing outside 1 to sqrt(3) or where an input is missing. [1]
 
     Notes
     -----

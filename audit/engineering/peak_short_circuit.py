@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike
 
-from audit.engineering.arrays import Floats, floats, zero_or_more
+from audit.engineering.arrays import Floats, floats, zero_or_more, zero_to_infinity
 
 
 def short_circuit_peak_ratio(x_to_r_ratio: ArrayLike) -> Floats:
@@ -39,7 +39,7 @@ def short_circuit_peak_ratio(x_to_r_ratio: ArrayLike) -> Floats:
     ----------
     IEC 60909-0:2016, peak short-circuit current.
     """
-    x_to_r = zero_or_more(x_to_r_ratio)
+    x_to_r = zero_to_infinity(x_to_r_ratio)
     with np.errstate(divide="ignore"):
         return floats(1.02 + 0.98 * np.exp(-3 / x_to_r))
 

@@ -89,8 +89,10 @@ def platinum_temperature_c(resistance_ohm: ArrayLike) -> Floats:
     temperature = (-LINEAR + np.sqrt(LINEAR**2 - 4 * SQUARE * (1 - share))) / (2 * SQUARE)
     for _ in range(NEWTON_STEPS):
         cold = temperature < 0
-        slope = LINEAR + 2 * SQUARE * temperature + np.where(
-            cold, BELOW_ZERO * (4 * temperature**3 - 300 * temperature**2), 0.0
+        slope = (
+            LINEAR
+            + 2 * SQUARE * temperature
+            + np.where(cold, BELOW_ZERO * (4 * temperature**3 - 300 * temperature**2), 0.0)
         )
         step = (_resistance(temperature) - resistance) / (RESISTANCE_AT_ZERO_OHM * slope)
         temperature = temperature - step

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike
 
-from audit.engineering.arrays import Floats, above_zero, floats, within, zero_or_more
+from audit.engineering.arrays import Floats, above_zero, floats, within, zero_or_more, zero_to_infinity
 from audit.engineering.terminal_fault import source_impedance_ohm
 from audit.engineering.unit_factors import SQRT3
 
@@ -64,7 +64,9 @@ def voltage_at_start_current_v(
     Circuit theory; IEEE 399.
     """
     supply = above_zero(supply_voltage_v)
-    impedance = _supply(supply, fault_ka, x_to_r_ratio) + _impedance(cable_resistance_ohm, cable_reactance_ohm)
+    impedance = _supply(supply, fault_ka, x_to_r_ratio) + _impedance(
+        cable_resistance_ohm, cable_reactance_ohm
+    )
     current = zero_or_more(start_current_a) * np.exp(-1j * np.arccos(within(start_power_factor, 0.0, 1.0)))
     drop = SQRT3 * current * impedance
     return np.where(np.abs(drop) <= supply, np.abs(supply - drop), np.nan)
@@ -195,7 +197,7 @@ Phasors = np.ndarray[tuple[int, ...], np.dtype[np.complex128]]
 
 
 def _supply(voltage_v: Floats, fault_ka: ArrayLike, x_to_r_ratio: ArrayLike) -> Phasors:
-    angle = np.arctan(zero_or_more(x_to_r_ratio))
+    angle = np.arctan(zero_to_infinity(x_to_r_ratio))
     return np.asarray(source_impedance_ohm(fault_ka, voltage_v) * np.exp(1j * angle))
 
 

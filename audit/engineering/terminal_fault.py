@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike
 
-from audit.engineering.arrays import Floats, above_zero, floats, zero_or_more
+from audit.engineering.arrays import Floats, above_zero, floats, zero_or_more, zero_to_infinity
 from audit.engineering.conductor import cable_reactance_ohm, cable_resistance_ohm
 from audit.engineering.unit_factors import SQRT3
 
@@ -93,7 +93,7 @@ def terminal_three_phase_fault_a(
     Ohm's law with complex impedances; IEC 60909-0.
     """
     source = source_impedance_ohm(bus_fault_ka, voltage_v)
-    angle = np.arctan(zero_or_more(bus_x_to_r_ratio))
+    angle = np.arctan(zero_to_infinity(bus_x_to_r_ratio))
     resistance = source * np.cos(angle) + zero_or_more(cable_resistance_ohm)
     reactance = source * np.sin(angle) + zero_or_more(cable_reactance_ohm)
     return floats(above_zero(voltage_v) / (SQRT3 * np.hypot(resistance, reactance)))

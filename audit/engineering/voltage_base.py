@@ -167,9 +167,7 @@ def pickup_in_pct(pickup_v: ArrayLike, base_voltage_v: ArrayLike) -> Floats:
     return floats(100 * zero_or_more(pickup_v) / above_zero(base_voltage_v))
 
 
-def pickup_in_secondary_v(
-    pickup_v: ArrayLike, vt_primary_v: ArrayLike, vt_secondary_v: ArrayLike
-) -> Floats:
+def pickup_in_secondary_v(pickup_v: ArrayLike, vt_primary_v: ArrayLike, vt_secondary_v: ArrayLike) -> Floats:
     """Pickup in secondary volts from primary volts.
 
     Vsec = V * Vs / Vp

@@ -4,11 +4,13 @@ from __future__ import annotations
 
 from audit.engineering.ct_accuracy import (
     actual_accuracy_limit_ratio,
-    class_voltage_v,
     ct_offset_voltage_v,
     ct_secondary_voltage_v,
     greatest_unsaturated_multiple,
     offset_saturation_multiple,
+)
+from audit.engineering.ct_burden import (
+    class_voltage_v,
     rated_burden_ohm,
     rated_burden_va,
     standard_burden_ohm,

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from audit.engineering.earth_fault import charging_current_a, resistor_current_a
+from audit.engineering.charging_current import charging_current_a
+from audit.engineering.earth_fault import resistor_current_a
 
 VALUES = "12-resistance-earthing"
 FORMULAS = {
