@@ -14,8 +14,8 @@ from audit.engineering.inverse_time import (
     inverse_curve_code,
     inverse_reset_time_s,
     inverse_time_s,
-    inverse_time_varying_s,
 )
+from audit.engineering.inverse_time_varying import inverse_time_varying_s
 
 VERY_INVERSE = inverse_curve_code("IEEE very inverse")
 codes = st.sampled_from(sorted(set(INVERSE_CURVE_CODES.values())))

@@ -10,12 +10,10 @@ from hypothesis import given
 from hypothesis import strategies as st
 from scipy.integrate import quad, solve_ivp
 
+from audit.engineering.kloss import breakdown_slip_pu, kloss_torque_nm, run_up_time_kloss_s
 from audit.engineering.run_up import (
     average_accelerating_torque_nm,
-    breakdown_slip_pu,
-    kloss_torque_nm,
     run_up_time_constant_torque_s,
-    run_up_time_kloss_s,
     run_up_time_s,
 )
 

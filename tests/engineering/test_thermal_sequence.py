@@ -8,12 +8,11 @@ from hypothesis import assume, given
 from hypothesis import strategies as st
 from scipy.integrate import solve_ivp
 
+from audit.engineering.thermal_level import thermal_level_after_pu, thermal_level_over_sequence_pu
 from audit.engineering.thermal_sequence import (
     cooling_time_s,
     permitted_starts,
     start_heat_pu,
-    thermal_level_after_pu,
-    thermal_level_over_sequence_pu,
     waiting_time_until_start_s,
 )
 

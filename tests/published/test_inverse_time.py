@@ -8,8 +8,8 @@ from audit.engineering.inverse_time import (
     inverse_curve_code,
     inverse_reset_time_s,
     inverse_time_s,
-    inverse_time_varying_s,
 )
+from audit.engineering.inverse_time_varying import inverse_time_varying_s
 
 VALUES = "01-inverse-time-curves"
 PICKUP_A = 100.0

@@ -7,7 +7,8 @@ from math import pi
 import numpy as np
 import pytest
 
-from audit.engineering.run_up import run_up_time_constant_torque_s, run_up_time_kloss_s, run_up_time_s
+from audit.engineering.kloss import run_up_time_kloss_s
+from audit.engineering.run_up import run_up_time_constant_torque_s, run_up_time_s
 from audit.engineering.unit_factors import KG_M2_PER_LB_FT2, NEWTON_METRE_PER_LB_FT
 
 VALUES = "10-acceleration"

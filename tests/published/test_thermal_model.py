@@ -9,8 +9,9 @@ from audit.engineering.negative_sequence import (
     equivalent_current_a,
     typical_unbalance_weight,
 )
+from audit.engineering.thermal_level import thermal_level_after_pu
 from audit.engineering.thermal_model import thermal_time_constant_s, thermal_trip_time_hot_s
-from audit.engineering.thermal_sequence import start_heat_pu, thermal_level_after_pu, waiting_time_until_start_s
+from audit.engineering.thermal_sequence import start_heat_pu, waiting_time_until_start_s
 
 VALUES = "02-thermal-model"
 
