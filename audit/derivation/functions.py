@@ -10,6 +10,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from audit.derivation.start_records import START_FUNCTIONS
 from audit.engineering import (
     bus_transfer,
     cable_withstand,
@@ -170,5 +171,6 @@ def _described(module: ModuleType, name: str) -> Function:
 
 FUNCTIONS: dict[str, Function] = {
     **BUILTIN,
+    **START_FUNCTIONS,
     **{name: _described(module, name) for module, names in _MODULES for name in names},
 }
