@@ -70,9 +70,7 @@ def _table(subject: str, rows: Sequence[Row]) -> Table:
     if subject == "start":
         keys = tuple(f"start {number}" for number in range(1, len(rows) + 1))
     else:
-        keys = tuple(
-            str(row.get(NAMES_ITSELF[subject]) or f"{subject} {number}") for number, row in enumerate(rows, 1)
-        )
+        keys = tuple(str(row.get(NAMES_ITSELF[subject]) or f"{subject} {number}") for number, row in enumerate(rows, 1))
     return Table(subject, keys, columns)
 
 
