@@ -63,6 +63,20 @@ def audit(
 
 
 @app.command()
+def explain(
+    fleet: FleetPath,
+    tag: Annotated[str, typer.Argument(metavar="TAG", help="The motor.")],
+    check: Annotated[str | None, typer.Argument(metavar="CHECK", help="One check; default all that apply.")] = None,
+    rules: RulesFolder = None,
+    on: Annotated[str | None, typer.Option("--on", metavar="DAY", help="The day of the audit; default today.")] = None,
+) -> None:
+    """Print a motor's calculation sheet: data, formulas with numbers, ranges, verdicts, sources, assumptions."""
+    from audit.commands.explain import run_explain
+
+    raise typer.Exit(run_explain(fleet, tag, check, rules=rules, audited_on=_day(on)))
+
+
+@app.command()
 def checks(
     name: Annotated[str | None, typer.Argument(metavar="NAME", help="One check in full.")] = None,
     verify: Annotated[bool, typer.Option("--verify", help="Run every worked case.")] = False,

@@ -13,7 +13,7 @@ from audit.checks.ranges import NO_CHECK
 from audit.findings.audit import Audit
 from audit.findings.finding import Finding
 from audit.findings.render import FindingRenderer
-from audit.report.cautions import CAUTIONS
+from audit.cautions import CAUTIONS
 
 RECORD_VERSION = 1
 

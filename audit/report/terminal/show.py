@@ -9,7 +9,7 @@ from rich.console import Console
 from rich.text import Text
 
 from audit.findings.audit import Audit
-from audit.report.cautions import SHORT_CAUTION
+from audit.cautions import SHORT_CAUTION
 from audit.report.terminal.findings import print_findings
 from audit.report.terminal.lacks import print_complaints, print_data_to_collect
 from audit.report.terminal.summary import print_summary
