@@ -111,7 +111,8 @@ def with_formats_replaced(data: bytes, prefix: bytes, replaced: Mapping[int, int
         former = attribute(found[1], b"s")
         if former is None or not former.isdigit() or int(former) not in replaced:
             return found[0]
-        attributes = with_attribute(found[1], b"s", str(replaced[int(former)]).encode())
+        new = replaced[int(former)]
+        attributes = with_attribute(found[1], b"s", str(new).encode() if new else None)
         return found[0][: found.start(1) - found.start()] + attributes + b">"
 
     return tag.sub(replace, data)

@@ -30,6 +30,7 @@ _NEEDED = {
     "borders": "<border><left/><right/><top/><bottom/><diagonal/></border>",
     "cellStyleXfs": '<xf numFmtId="0" fontId="0" fillId="0" borderId="0"/>',
     "cellXfs": '<xf numFmtId="0" fontId="0" fillId="0" borderId="0" xfId="0"/>',
+    "cellStyles": '<cellStyle name="Normal" xfId="0" builtinId="0"/>',
 }
 
 
@@ -148,6 +149,10 @@ class Styles:
             insert_in_order(self.root, holder, _ORDER[_ORDER.index(main(group)) + 1 :])
         holder.extend(etree.fromstring(f'<s xmlns="{MAIN}">{_NEEDED.get(group, "")}</s>'))
         holder.set("count", str(len(holder)))
+        if group == "cellXfs":
+            # the one format made here names the first of each of these
+            for named in ("fonts", "fills", "borders", "cellStyleXfs", "cellStyles"):
+                self.items(named)
         return holder
 
 

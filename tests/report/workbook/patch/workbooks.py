@@ -190,8 +190,11 @@ def rich_parts(macros: bool = False) -> Parts:
         '<extLst><ext xmlns:x14="' + X14 + '" uri="{CCE6A557-97BC-4b89-ADB6-D9C93CAAB3DF}"><x14:dataValidations '
         'xmlns:xm="' + EXCEL_MAIN + '" count="1"><x14:dataValidation type="list"><x14:formula1><xm:f>Lists!$A$1:$A$2'
         "</xm:f></x14:formula1><xm:sqref>C4</xm:sqref></x14:dataValidation></x14:dataValidations></ext>"
-        '<ext xmlns:x14="' + X14 + '" uri="{05C60535-1F16-4fd2-B633-F4F36F0B64E0}"><x14:sparklineGroups xmlns:xm="'
-        + EXCEL_MAIN + '"><x14:sparklineGroup><x14:sparklines><x14:sparkline><xm:f>Motors!A2:C2</xm:f><xm:sqref>D6'
+        '<ext xmlns:x14="'
+        + X14
+        + '" uri="{05C60535-1F16-4fd2-B633-F4F36F0B64E0}"><x14:sparklineGroups xmlns:xm="'
+        + EXCEL_MAIN
+        + '"><x14:sparklineGroup><x14:sparklines><x14:sparkline><xm:f>Motors!A2:C2</xm:f><xm:sqref>D6'
         "</xm:sqref></x14:sparkline></x14:sparklines></x14:sparklineGroup></x14:sparklineGroups></ext></extLst>"
     )
     parts = with_notes(plain_parts(rows, before))
@@ -280,10 +283,10 @@ def _drawing() -> bytes:
     )
     return (
         f'{HEAD}<xdr:wsDr xmlns:xdr="{DRAWING}/spreadsheetDrawing" xmlns:a="{DRAWING}/main" xmlns:r="{OFFICE}">'
-        f"<xdr:twoCellAnchor>{anchor}<xdr:sp macro=\"\" textlink=\"\"><xdr:nvSpPr><xdr:cNvPr id=\"2\" name=\"Box\"/>"
+        f'<xdr:twoCellAnchor>{anchor}<xdr:sp macro="" textlink=""><xdr:nvSpPr><xdr:cNvPr id="2" name="Box"/>'
         '<xdr:cNvSpPr txBox="1"/></xdr:nvSpPr><xdr:spPr><a:prstGeom prst="rect"><a:avLst/></a:prstGeom></xdr:spPr>'
         "<xdr:txBody><a:bodyPr/><a:p><a:r><a:t>Do not alter</a:t></a:r></a:p></xdr:txBody></xdr:sp>"
-        f"<xdr:clientData/></xdr:twoCellAnchor><xdr:twoCellAnchor>{anchor}<xdr:pic><xdr:nvPicPr><xdr:cNvPr id=\"3\" "
+        f'<xdr:clientData/></xdr:twoCellAnchor><xdr:twoCellAnchor>{anchor}<xdr:pic><xdr:nvPicPr><xdr:cNvPr id="3" '
         'name="Picture"/><xdr:cNvPicPr/></xdr:nvPicPr><xdr:blipFill><a:blip r:embed="rId1"/><a:stretch><a:fillRect/>'
         '</a:stretch></xdr:blipFill><xdr:spPr><a:prstGeom prst="rect"><a:avLst/></a:prstGeom></xdr:spPr></xdr:pic>'
         "<xdr:clientData/></xdr:twoCellAnchor></xdr:wsDr>"
