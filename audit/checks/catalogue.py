@@ -11,7 +11,7 @@ from audit.checks.entry import Check, Requirement, read_entry
 from audit.derivation.functions import FUNCTIONS
 from audit.derivation.recipes import Recipe, check_recipes, lookup_for, read_recipes
 from audit.expression.functions import Functions
-from audit.expression.nodes import Node
+from audit.expression.nodes import Node, names_in
 from audit.expression.parse import BadExpression
 from audit.expression.units import Meaning, UnitCheck, nearest
 from audit.limits.limits import BadRule, Limit, override_limits, read_limits, read_rule_file
@@ -48,6 +48,20 @@ class Catalogue:
     def packs(self) -> tuple[str, ...]:
         """Give the names of the packs, core first."""
         return tuple(dict.fromkeys((CORE, *(check.pack for check in self.checks))))
+
+    def names_beneath(self, check: Check) -> set[str]:
+        """Give every quantity and limit that a check rests on, through all recipes."""
+        nodes: list[Node] = [check.when]
+        for requirement in check.requirements:
+            parts = (requirement.when, requirement.judged, requirement.bound, requirement.within)
+            nodes += [node for node in parts if node is not None]
+        found: set[str] = set()
+        while nodes:
+            for name in set(names_in(nodes.pop())) - found:
+                found.add(name)
+                if name in self.recipes:
+                    nodes += [way.node for way in self.recipes[name].ways]
+        return found
 
     def named(self, name: str) -> list[Check]:
         """Give the checks of this name: one, or one for each setting."""
