@@ -48,6 +48,18 @@ class ColumnReading:
     how: str
 
 
+@dataclass(frozen=True, slots=True)
+class SheetReading:
+    """How a sheet was understood: its table, its layout ("wide", "long", "block"), and where its headers stand."""
+
+    file: str
+    sheet: str
+    table: str
+    layout: str
+    header_row: int
+    header_rows: int
+
+
 @dataclass(frozen=True)
 class Gathered:
     """Everything that was read of a site, not yet resolved to values of motors, relays, buses and starts."""
@@ -60,6 +72,7 @@ class Gathered:
     complaints: list[Complaint] = field(default_factory=list)
     questions: list[Question] = field(default_factory=list)
     columns: list[ColumnReading] = field(default_factory=list)
+    sheets: list[SheetReading] = field(default_factory=list)
 
 
 class CannotRead(Refusal):

@@ -48,6 +48,8 @@ class Element:
     function: str
     label: str
     words: tuple[str, ...]
+    ambiguous_words: tuple[str, ...] = ()
+    """Words that some sites write for this element and others for another one."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -86,7 +88,9 @@ def fold_choice(text: str) -> str:
     return " ".join(text.casefold().replace("-", " ").replace("_", " ").split()) or text.strip()
 
 
-def _quantity(name: str, entry: Mapping[str, Any], file: str, elements: Mapping[str, Element], parts: Mapping[str, Part]) -> Quantity:
+def _quantity(
+    name: str, entry: Mapping[str, Any], file: str, elements: Mapping[str, Element], parts: Mapping[str, Part]
+) -> Quantity:
     element = elements.get(entry.get("element", ""))
     part = parts.get(entry.get("part", ""))
     kind: Kind = entry.get("kind") or (part.kind if part else "number")
@@ -126,7 +130,13 @@ def vocabulary() -> Vocabulary:
     here = files("audit.vocabulary")
     words = tomllib.loads(here.joinpath("elements.toml").read_text("utf-8"))
     elements = {
-        name: Element(name, entry["function"], entry["label"], tuple(entry["words"]))
+        name: Element(
+            name,
+            entry["function"],
+            entry["label"],
+            tuple(entry["words"]),
+            tuple(entry.get("ambiguous_words", ())),
+        )
         for name, entry in words["elements"].items()
     }
     parts = {

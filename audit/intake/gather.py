@@ -1,0 +1,263 @@
+"""All workbooks of a site to readings: open, find the tables, read them, ask what is open."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass, field
+from pathlib import Path
+
+import numpy as np
+
+from audit.fleet.addresses import NO_CELL, SheetBook
+from audit.fleet.fleet import Complaint, InputFile, Question
+from audit.intake.gathered import CannotRead, ColumnReading, Gathered, SheetReading
+from audit.intake.layouts.wide import read_wide
+from audit.intake.opening import SheetGrid, UnreadableWorkbook, WorkbookGrids, find_workbooks, open_workbook
+from audit.intake.recognition.blocks import Readings, frame
+from audit.intake.recognition.cells_to_readings import Source
+from audit.intake.recognition.dictionary import combined_readings
+from audit.intake.recognition.header_rows import Heading, find_heading, heading_at
+from audit.intake.recognition.plans import MAPPED, UNREAD, Plan
+from audit.intake.recognition.row_kinds import rows_in_words
+from audit.intake.recognition.sheets import Records, Sheet, said
+from audit.intake.recognition.tables import Verdict, table_of
+from audit.intake.resolve.names import exact
+from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map
+
+Progress = Callable[[str], None]
+
+
+@dataclass
+class _Run:
+    """What a run has gathered so far."""
+
+    map: SiteMap
+    book: SheetBook = field(default_factory=SheetBook)
+    records: Records = field(default_factory=Records)
+    inputs: list[InputFile] = field(default_factory=list)
+    complaints: list[Complaint] = field(default_factory=list)
+    questions: list[Question] = field(default_factory=list)
+    readings: list[Readings] = field(default_factory=list)
+    columns: list[ColumnReading] = field(default_factory=list)
+    sheets: list[SheetReading] = field(default_factory=list)
+
+
+@dataclass
+class _Candidate:
+    """A sheet with the place of its headers and the table they fit."""
+
+    file: str
+    grid: SheetGrid
+    mapped: MappedSheet | None
+    heading: Heading | None
+    verdict: Verdict | None
+    last_row: int
+
+
+def gather(path: Path, progress: Progress | None = None) -> Gathered:
+    """Read all workbooks of a folder, or one workbook, to readings.
+
+    Raises
+    ------
+    CannotRead
+        If nothing can be judged: no workbook could be read, none holds a motor list, `fleet.toml` is wrong.
+    """
+    tell = progress or (lambda text: None)
+    if not path.exists():
+        raise CannotRead(_nothing(path, "there is no such file or folder", "a folder of workbooks, or a workbook"))
+    folder = path if path.is_dir() else path.parent
+    run = _Run(load_site_map(folder))
+    files = find_workbooks(path)
+    if not files:
+        raise CannotRead(
+            _nothing(path, "the folder holds no workbook", "workbooks: .xlsx .xlsm .xls .xlsb .ods .csv .tsv")
+        )
+    candidates: list[_Candidate] = []
+    for file in files:
+        tell(f"reading {file.name}")
+        candidates += _candidates(file, run)
+    if not run.inputs:
+        raise CannotRead(run.complaints[0])
+    _ensure_motor_list(candidates, path, run)
+    tell("recognising tables")
+    for candidate in candidates:
+        _read(candidate, run)
+    _must_run(run)
+    site = run.map.site or (path.name if path.is_dir() else path.stem)
+    facts = {**run.map.facts, "site": site}
+    return Gathered(
+        site,
+        facts,
+        run.book,
+        tuple(run.inputs),
+        frame(run.readings),
+        run.complaints,
+        run.questions,
+        run.columns,
+        run.sheets,
+    )
+
+
+def _nothing(path: Path, found: str, expected: str) -> Complaint:
+    return Complaint(path.name, "", "", found, expected, "Check the path.", weight="stop")
+
+
+def _candidates(file: Path, run: _Run) -> list[_Candidate]:
+    """Open a workbook and look at each of its sheets."""
+    try:
+        workbook = open_workbook(file)
+    except UnreadableWorkbook as error:
+        run.complaints.append(
+            Complaint(file.name, "", "", error.found, error.expected, error.advice, weight="stop")
+        )
+        return []
+    run.inputs.append(InputFile(file.name, workbook.sha256, str(file)))
+    return [
+        candidate for grid in workbook.sheets for candidate in _tables_of(file.name, workbook, grid, run.map)
+    ]
+
+
+def _tables_of(file: str, workbook: WorkbookGrids, grid: SheetGrid, site: SiteMap) -> list[_Candidate]:
+    mapped = site.sheet(file, grid.name)
+    if mapped and mapped.table == "none":
+        return []
+    if not grid.height:
+        return []
+    if mapped and mapped.header_row:
+        heading: Heading | None = heading_at(grid, mapped.header_row, mapped.header_rows)
+    else:
+        heading = find_heading(grid)
+    verdict = table_of(heading) if heading else None
+    if heading and mapped and mapped.table and (verdict is None or verdict.table != mapped.table):
+        verdict = Verdict(mapped.table, 0.0, heading.matches(mapped.table))
+    return [_Candidate(file, grid, mapped, heading, verdict, grid.height)]
+
+
+def _ensure_motor_list(candidates: list[_Candidate], path: Path, run: _Run) -> None:
+    """Let the best sheet with tags be the motor list where no sheet is one; refuse where none can be."""
+    if any(candidate.verdict and candidate.verdict.table == "motor" for candidate in candidates):
+        return
+    offers = [
+        (verdict.score, index, verdict)
+        for index, candidate in enumerate(candidates)
+        if candidate.heading and (verdict := table_of(candidate.heading, settings_make_list=True)) is not None
+        if verdict.table == "motor"
+    ]
+    if offers:
+        _, index, verdict = max(offers, key=lambda offer: (offer[0], -offer[1]))
+        candidates[index].verdict = verdict
+        return
+    complaint = _nothing(path, "no sheet holds a list of motors", "a sheet with a tag and rated data for each motor")
+    raise CannotRead(
+        Complaint(
+            complaint.file,
+            "",
+            "",
+            complaint.found,
+            complaint.expected,
+            "Name the sheet, its header row and its columns in fleet.toml.",
+            weight="stop",
+        )
+    )
+
+
+def _read(candidate: _Candidate, run: _Run) -> None:
+    """Read one sheet by its layout."""
+    grid = candidate.grid
+    source = Source(
+        candidate.file,
+        grid.name,
+        grid.decimal_comma,
+        run.map.stand_ins,
+        run.map.zero_means_off,
+        run.complaints,
+        run.questions,
+    )
+    sheet = Sheet(
+        grid, run.book.index(candidate.file, grid.name), source, run.records, day_first=run.map.day_first
+    )
+    heading, verdict = candidate.heading, candidate.verdict
+    if heading is None or verdict is None:
+        source.remark(-1, "no table was recognised on this sheet", "a table with headers", "It is left unread.")
+        return
+    mapped = _mapped(heading, candidate.mapped)
+    if not read_wide(sheet, heading, verdict.table, verdict.matches, candidate.last_row, mapped):
+        source.remark(-1, "no column names the rows of this sheet", "a column of tags", "It is left unread.")
+        return
+    _say_hidden(sheet)
+    run.readings += sheet.readings
+    run.columns += sheet.columns
+    run.sheets.append(
+        SheetReading(candidate.file, grid.name, verdict.table, "wide", heading.first_row, heading.depth)
+    )
+
+
+def _mapped(heading: Heading, entry: MappedSheet | None) -> dict[int, Plan]:
+    """Give the plans of the columns that the site map speaks of."""
+    if entry is None:
+        return {}
+    plans = {}
+    for column in heading.texts:
+        said_of = entry.column_named(column, heading.label(column))
+        if said_of is None:
+            continue
+        combined = said_of.quantity if said_of.quantity in combined_readings() else ""
+        plans[column] = Plan(
+            column,
+            heading.label(column),
+            "" if combined else said_of.quantity,
+            combined,
+            said_of.unit,
+            how=MAPPED if said_of.quantity else UNREAD,
+        )
+    return plans
+
+
+def _say_hidden(sheet: Sheet) -> None:
+    """Tell of hidden rows, columns and sheets, which are read like others."""
+    grid, source = sheet.grid, sheet.source
+    if grid.hidden:
+        source.remark(-1, "the sheet is hidden", "sheets that are shown", "It is read like the others.")
+    if grid.hidden_rows:
+        source.remark(
+            -1, f"{rows_in_words(sorted(grid.hidden_rows))} hidden", "rows that are shown", "They are read."
+        )
+    if grid.hidden_columns:
+        source.remark(
+            -1, f"{len(grid.hidden_columns)} columns are hidden", "columns that are shown", "They are read."
+        )
+    for note in grid.notes:
+        source.remark(-1, note, "a workbook whose cells can be told fully")
+
+
+def _must_run(run: _Run) -> None:
+    """Mark the motors that the site map names as must-run."""
+    wanted = {exact(tag) for tag in run.map.must_run}
+    if not wanted:
+        return
+    met: set[str] = set()
+    for block in [block for block in run.readings if block.quantity == "motor" and block.table == "motor"]:
+        tags = [exact(text) if isinstance(text, str) else "" for text in block.text.tolist()]
+        places = np.array([place for place, tag in enumerate(tags) if tag in wanted], dtype=np.int64)
+        met.update(tags[place] for place in places.tolist())
+        if places.size:
+            size = len(places)
+            made = said(
+                "must_run", block.record[places], ["yes"] * size, np.full(size, NO_CELL, dtype=np.int64), "fleet.toml"
+            )
+            made.table = "motor"
+            run.readings.append(made)
+    for tag in run.map.must_run:
+        if exact(tag) not in met:
+            run.complaints.append(
+                Complaint(
+                    "fleet.toml",
+                    "",
+                    "",
+                    f"must_run names '{tag}', which no motor list has",
+                    "tags of the motor list",
+                    "Correct the tag.",
+                    "must_run",
+                    weight="remark",
+                )
+            )

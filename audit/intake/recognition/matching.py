@@ -1,0 +1,261 @@
+"""What a header means in a table: a quantity with unit and base, a doubt, a near miss, or nothing."""
+
+from __future__ import annotations
+
+import difflib
+import re
+from collections.abc import Sequence
+from dataclasses import dataclass
+from functools import lru_cache
+
+from audit.intake.celltext.characters import plain
+from audit.intake.recognition.dictionary import TABLES, Entry, combined_readings, dictionary
+from audit.intake.recognition.folding import fold_header
+from audit.intake.recognition.header_units import split_units, unit_in_words
+from audit.intake.recognition.settings_grammar import (
+    doubtful_elements,
+    read_element,
+    read_setting_words,
+    setting_named,
+)
+from audit.vocabulary.quantities import Quantity, vocabulary
+from audit.vocabulary.spellings import UnitReading, read_unit
+
+LONGEST_HEADER = 90
+NEAR = 0.84
+_GROUP = re.compile(
+    r"\b(?:setting group|set group|setting grp|group|grp|sg|gr)\s*(?P<group>\d|[a-h])\b|^g(?P<short>[1-8])\b|\bg(?P<last>[1-8])$"
+)
+_LITTLE = frozenset(["data", "details", "detail", "information", "info", "parameters", "parameter", "list", "section", "particulars", "values"])
+_LEADS = {
+    "motor": frozenset(["motor", "nameplate", "name", "plate", "rated", "setting", "protection", "relay"]) - {"relay"},
+    "relay": frozenset(["relay", "setting", "protection"]),
+    "bus": frozenset(["bus", "board", "switchgear", "system"]),
+    "start": frozenset(["recorded", "record", "measured", "event"]),
+}
+_LAST = {"motor": frozenset({"np", "nameplate"}), "relay": frozenset(), "bus": frozenset(), "start": frozenset({"recorded", "measured"})}
+_NEUTRAL = frozenset(
+    ["motor", "nameplate", "name", "plate", "rated", "general", "identification", "electrical", "mechanical", "protection", "setting", "relay", "data", "details", "info", "information", "equipment", "load", "basic", "main", "characteristics", "and", "&", "technical", "machine", "supply"]
+)
+
+
+@dataclass(frozen=True, slots=True)
+class HeaderMatch:
+    """A header as it was understood in one table."""
+
+    quantity: str = ""
+    combined: str = ""
+    candidates: tuple[str, ...] = ()
+    unit: UnitReading | None = None
+    unit_text: str = ""
+    group: str = ""
+    open_part: str = ""
+    """'trip' or 'alarm' where only the cells tell whether they hold yes and no, a level or a time."""
+    element: str = ""
+
+    @property
+    def known(self) -> bool:
+        """Tell whether the header means one thing."""
+        return bool(self.quantity or self.combined)
+
+    @property
+    def name(self) -> str:
+        """Give what the header means, for comparison."""
+        return self.quantity or self.combined
+
+
+NOTHING = HeaderMatch()
+
+
+@lru_cache(maxsize=65536)
+def match_header(header: str, table: str) -> HeaderMatch:
+    """Give what one header text means in a table.
+
+    >>> match_header("Rated Power (kW)", "motor").quantity
+    'rated_power_kw'
+    >>> found = match_header("50 PU x FLA", "relay")
+    >>> found.quantity, found.unit
+    ('short_circuit_trip_pickup_a', UnitReading(unit='x', base='full_load'))
+    >>> match_header("In", "motor").candidates != ()
+    True
+    """
+    text = plain(header)
+    if not text or len(text) > LONGEST_HEADER:
+        return NOTHING
+    doubt = NOTHING
+    for words, unit_text in split_units(text):
+        folded = fold_header(words)
+        group = ""
+        if table in ("motor", "relay"):
+            folded, group = _without_group(folded)
+        for variant in _variants(folded, table):
+            found = _meaning(variant, words, unit_text, group, table)
+            if found.known:
+                return found
+            if found.candidates and not doubt.candidates:
+                doubt = found
+    return doubt
+
+
+def _without_group(folded: str) -> tuple[str, str]:
+    match = _GROUP.search(folded)
+    if match is None:
+        return folded, ""
+    rest = (folded[: match.start()] + " " + folded[match.end() :]).split()
+    if not rest:
+        return folded, ""
+    return " ".join(rest), (match["group"] or match["short"] or match["last"]).upper()
+
+
+def _variants(folded: str, table: str) -> list[str]:
+    """Give a folded header, and what is left of it without words that say little."""
+    variants = [folded]
+    words = folded.split()
+    without = [word for word in words if word not in _LITTLE]
+    if without and len(without) < len(words):
+        variants.append(" ".join(without))
+    while len(without) > 1 and without[0] in _LEADS[table]:
+        without = without[1:]
+        variants.append(" ".join(without))
+    if len(without) > 1 and without[-1] in _LAST[table]:
+        variants.append(" ".join(without[:-1]))
+    return variants
+
+
+def _meaning(folded: str, words: str, unit_text: str, group: str, table: str) -> HeaderMatch:
+    entries = dictionary(table).find(folded)
+    if entries:
+        return _of_entries(entries, words, unit_text, group)
+    if table not in ("motor", "relay"):
+        return NOTHING
+    read = read_setting_words(folded)
+    if read is not None:
+        return _of_setting(read.element, read.part, folded, words, unit_text, group)
+    names, part = doubtful_elements(folded)
+    if names:
+        candidates = tuple(
+            name for element in names if (name := setting_named(element, part or "trip_pickup")) is not None
+        )
+        return HeaderMatch(candidates=candidates, unit_text=unit_text, group=group)
+    return NOTHING
+
+
+def _of_entries(entries: tuple[Entry, ...], words: str, unit_text: str, group: str) -> HeaderMatch:
+    known = vocabulary().quantities
+    first = entries[0]
+    if first.combined:
+        target = known[combined_readings()[first.name].quantities[0]]
+        unit = _unit(unit_text, words, target)
+        if unit_text and unit is None:
+            return NOTHING
+        return HeaderMatch(combined=first.name, unit=unit, unit_text=unit_text, group=group)
+    fitting = [e for e in entries if not unit_text or read_unit(unit_text, known[e.name]) is not None]
+    if not fitting:
+        return NOTHING
+    if fitting[0].sure:
+        return _sure(known[fitting[0].name], words, unit_text, group)
+    if len(fitting) == 1 and len(entries) > 1:
+        return _sure(known[fitting[0].name], words, unit_text, group)
+    units = {read_unit(unit_text, known[e.name]) for e in fitting} if unit_text else {None}
+    return HeaderMatch(
+        candidates=tuple(e.name for e in fitting),
+        unit=units.pop() if len(units) == 1 else None,
+        unit_text=unit_text,
+        group=group,
+    )
+
+
+def _sure(quantity: Quantity, words: str, unit_text: str, group: str) -> HeaderMatch:
+    return HeaderMatch(
+        quantity.name,
+        unit=_unit(unit_text, words, quantity),
+        unit_text=unit_text,
+        group=group,
+        element=quantity.element or "",
+    )
+
+
+def _unit(unit_text: str, words: str, quantity: Quantity) -> UnitReading | None:
+    return read_unit(unit_text, quantity) if unit_text else unit_in_words(words, quantity)
+
+
+def _of_setting(
+    element: str, part: str, folded: str, words: str, unit_text: str, group: str
+) -> HeaderMatch:
+    known = vocabulary().quantities
+    stage = {"": "trip", "trip_on": "trip", "alarm_on": "alarm"}.get(part, "")
+    open_part = stage if not part or folded.split()[-1] in ("trip", "alarm", "alm") else ""
+    if open_part and unit_text:
+        for candidate in (f"{stage}_pickup", f"{stage}_delay"):
+            name = setting_named(element, candidate)
+            if name is not None and read_unit(unit_text, known[name]) is not None:
+                return _sure(known[name], words, unit_text, group)
+        return NOTHING
+    name = setting_named(element, part or "trip_on")
+    if name is None:
+        if open_part:
+            return HeaderMatch(open_part=open_part, element=element, group=group)
+        return NOTHING
+    quantity = known[name]
+    if unit_text and read_unit(unit_text, quantity) is None:
+        return NOTHING
+    unit = read_unit(unit_text, quantity) if unit_text else None
+    return HeaderMatch(name, unit=unit, unit_text=unit_text, group=group, open_part=open_part, element=element)
+
+
+@lru_cache(maxsize=65536)
+def match_texts(texts: tuple[str, ...], table: str) -> HeaderMatch:
+    """Give what a heading of several rows means, read downwards.
+
+    >>> match_texts(("Motor", "Rated", "Current (A)"), "motor").quantity
+    'full_load_a'
+    """
+    if len(texts) == 1:
+        return match_header(texts[0], table)
+    joined = match_header(" ".join(texts), table)
+    if joined.known:
+        return joined
+    doubt = joined
+    for first in range(1, len(texts)):
+        # what is left away above must say nothing about the column
+        if not all(_neutral(text, table) for text in texts[:first]):
+            continue
+        found = match_header(" ".join(texts[first:]), table)
+        if found.known:
+            return found
+        doubt = doubt if doubt.candidates else found
+    return doubt
+
+
+def _neutral(text: str, table: str) -> bool:
+    words = set(fold_header(text).split())
+    return words <= (_NEUTRAL - {"relay", "setting", "protection"} if table == "motor" else _NEUTRAL)
+
+
+def match_anywhere(header: str) -> bool:
+    """Tell whether any table knows a text as a header."""
+    return any(match_header(header, table).known for table in TABLES)
+
+
+def near_miss(texts: Sequence[str], table: str) -> str:
+    """Give the quantity whose header is spelled almost like this one, or nothing.
+
+    >>> near_miss(["Rated Powr"], "motor")
+    'rated_power_kw'
+    """
+    entries = dictionary(table).entries
+    for text in (" ".join(texts), texts[-1]):
+        for words, _ in split_units(plain(text)):
+            folded = fold_header(words)
+            if len(folded) < 4:
+                continue
+            close = difflib.get_close_matches(folded, entries, n=1, cutoff=NEAR)
+            if close:
+                entry = entries[close[0]][0]
+                return combined_readings()[entry.name].quantities[0] if entry.combined else entry.name
+    return ""
+
+
+def heading_element(text: str) -> str:
+    """Give the element that a heading above rows of settings names, or nothing."""
+    return read_element(fold_header(text)) or ""
