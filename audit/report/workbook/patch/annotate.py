@@ -18,7 +18,7 @@ from audit.report.workbook.patch.properties import list_worksheets
 from audit.report.workbook.patch.record import Record, is_ours, marked_sheets, read_record, write_record
 from audit.report.workbook.patch.refusal import CannotPatch
 from audit.report.workbook.patch.sheet_names import free_names
-from audit.report.workbook.patch.styles import Styles
+from audit.report.workbook.patch.styles import MarkedCells, Styles
 from audit.report.workbook.patch.undo import take_back
 from audit.report.workbook.patch.workbook_part import WorkbookPart
 from audit.report.workbook.patch.worksheet import Worksheet
@@ -100,7 +100,7 @@ def annotate_copy(
         names = graft_report(book, styles, report, first)
         list_worksheets(package, list(names.values()), [], first)
     authors = tuple(dict.fromkeys([*record.authors, author]))
-    write_record(book, Record(tuple(names.values()), authors, tuple(styles.formers)))
+    write_record(book, Record(tuple(names.values()), authors, tuple(styles.formers), tuple(totals.cells)))
     package.save(target)
     return AnnotationOutcome(
         target,
@@ -143,6 +143,7 @@ class _Totals:
         self.filled = self.added = self.extended = 0
         self.threaded: list[tuple[str, str]] = []
         self.moved: dict[tuple[str, str], str] = {}
+        self.cells: list[MarkedCells] = []
 
 
 def _check_paths(source: Path, target: Path, report: Path | None) -> None:
@@ -183,7 +184,7 @@ def _mark_sheet(
         fills.setdefault(shown, mark.fill)
         if mark.note:
             notes[shown] = f"{notes[shown]}\n\n{mark.note}" if shown in notes else mark.note
-    paint_sheet(sheet, styles, fills)
+    totals.cells += paint_sheet(sheet, name, styles, fills)
     outcome = write_notes(book.package, sheet, notes, author)
     sheet.save()
     totals.filled += len(fills)

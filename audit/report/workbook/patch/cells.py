@@ -25,12 +25,17 @@ Restyle = Callable[[int, str], int]
 
 
 class Painter:
-    """Fills cells of one sheet; `inserted` lists those that the sheet did not have."""
+    """Gives cells of one sheet other formats.
 
-    def __init__(self, source: Source, restyle: Restyle, column_format: Callable[[int], int]) -> None:
+    `painted` lists them by the format that they got, `inserted` those that the sheet did not have. Without a
+    `column_format` to inherit, cells that the sheet does not have are passed over.
+    """
+
+    def __init__(self, source: Source, restyle: Restyle, column_format: Callable[[int], int] | None) -> None:
         self._source = source
         self._restyle = restyle
         self._column_format = column_format
+        self.painted: dict[int, list[tuple[int, int]]] = {}
         self.inserted: list[tuple[int, int]] = []
 
     def paint(self, start: int, end: int, fills: Fills) -> Content:
@@ -65,7 +70,7 @@ class Painter:
                 waiting.pop()
                 done, outside = cell.start, True
             if waiting and waiting[-1] == cell.number:
-                pieces += data[done : cell.start], self._painted_cell(cell, fills[waiting.pop()])
+                pieces += data[done : cell.start], self._painted_cell(row.number, cell, fills[waiting.pop()])
                 done = cell.after
             last_end = cell.end
         if waiting:
@@ -80,21 +85,27 @@ class Painter:
             return b"".join([b"<", tag, attributes, b">", *pieces, b"</", tag, b">"])
         return b"".join([b"<", tag, attributes, b">", *pieces, data[done : row.end]])
 
-    def _painted_cell(self, cell: Tag, fill: str) -> bytes:
+    def _painted_cell(self, row: int, cell: Tag, fill: str) -> bytes:
         former = attribute(cell.attributes, b"s")
         new = self._restyle(int(former) if former and former.isdigit() else 0, fill)
+        self.painted.setdefault(new, []).append((row, cell.number))
         attributes = with_attribute(cell.attributes, b"s", str(new).encode())
         return b"".join([b"<", self._source.prefix, b"c", attributes, b"/>" if cell.empty else b">"])
 
     def _new_row(self, number: int, fills: Mapping[int, str]) -> bytes:
+        if self._column_format is None:
+            return b""
         tag = self._source.prefix + b"row"
         inside = [self._new_cell(number, column, None, fills) for column in sorted(fills)]
         return b"".join([b"<", tag, b' r="%d">' % number, *inside, b"</", tag, b">"])
 
     def _new_cell(self, row: int, column: int, row_format: int | None, fills: Mapping[int, str]) -> bytes:
+        if self._column_format is None:
+            return b""
         self.inserted.append((row, column))
         former = self._column_format(column) if row_format is None else row_format
         new = self._restyle(former, fills[column])
+        self.painted.setdefault(new, []).append((row, column))
         return b"<" + self._source.prefix + f'c r="{a1(row, column)}" s="{new}"/>'.encode()
 
 

@@ -89,10 +89,10 @@ def take_back_notes(package: Package, sheet: Worksheet, authors: set[str]) -> bo
         gone: set[Cell] = set()
         for comment in ours:
             _cut(comment)
-            author = comment.get("authorId", "")
-            written_by_us = author.isdigit() and int(author) < len(names) and names[int(author)] in authors
+            number = comment.get("authorId", "")
+            author = names[int(number)] if number.isdigit() and int(number) < len(names) else ""
             cell = cell_of(comment.get("ref", ""))
-            if not note_text(comment) and written_by_us and cell is not None:
+            if not note_text(comment) and author in {*authors, ""} and cell is not None:
                 gone.add(cell)
                 holder.remove(comment)
         frame_changed |= remove_boxes(package, sheet, gone, keep_part=len(holder) > 0)

@@ -5,10 +5,11 @@ from __future__ import annotations
 from bisect import bisect_left
 from collections.abc import Callable, Iterable, Mapping
 
+from audit.fleet.addresses import a1
 from audit.report.workbook.patch.cells import Painter
 from audit.report.workbook.patch.ooxml import main
-from audit.report.workbook.patch.references import range_of, range_text
-from audit.report.workbook.patch.styles import Styles
+from audit.report.workbook.patch.references import cell_of, range_of, range_text
+from audit.report.workbook.patch.styles import MarkedCells, Styles
 from audit.report.workbook.patch.tags import Source
 from audit.report.workbook.patch.worksheet import Worksheet
 
@@ -34,14 +35,47 @@ def anchors(sheet: Worksheet, cells: Iterable[Cell]) -> dict[Cell, Cell]:
     return found
 
 
-def paint_sheet(sheet: Worksheet, styles: Styles, fills: Mapping[Cell, str]) -> None:
-    """Give cells their fills, and the sheet its new extent where cells were added."""
+def paint_sheet(sheet: Worksheet, name: str, styles: Styles, fills: Mapping[Cell, str]) -> list[MarkedCells]:
+    """Give cells their fills, and the sheet its new extent where cells were added; gives what to remember."""
+    source = Source(sheet.data, sheet.prefix, sheet.nested)
+    painter = Painter(source, styles.painted, _column_formats(sheet))
+    sheet.rows = painter.paint(sheet.start, sheet.end, _by_row(fills))
+    _extend(sheet, painter)
+    return [
+        MarkedCells(name, fills[cells[0]].upper(), styles.former_of[number], tuple(a1(*cell) for cell in cells))
+        for number, cells in sorted(painter.painted.items())
+    ]
+
+
+def unpaint_sheet(sheet: Worksheet, styles: Styles, marked: Iterable[MarkedCells]) -> bool:
+    """Give recorded cells back what they had, where they still have our fill; tell whether there were any."""
+    groups = dict(enumerate(marked))
+    keys = {
+        cell: str(number)
+        for number, group in groups.items()
+        for cell in map(cell_of, group.addresses)
+        if cell is not None
+    }
+    if not keys:
+        return False
+
+    def restore(cell_format: int, key: str) -> int:
+        group = groups[int(key)]
+        return styles.unpainted(cell_format, group.fill, group.former)
+
+    painter = Painter(Source(sheet.data, sheet.prefix, sheet.nested), restore, None)
+    sheet.rows = painter.paint(sheet.start, sheet.end, _by_row(keys))
+    return True
+
+
+def _by_row(fills: Mapping[Cell, str]) -> dict[int, dict[int, str]]:
     by_row: dict[int, dict[int, str]] = {}
     for (row, column), fill in fills.items():
         by_row.setdefault(row, {})[column] = fill
-    source = Source(sheet.data, sheet.prefix, sheet.nested)
-    painter = Painter(source, styles.painted, _column_formats(sheet))
-    sheet.rows = painter.paint(sheet.start, sheet.end, by_row)
+    return by_row
+
+
+def _extend(sheet: Worksheet, painter: Painter) -> None:
     dimension = sheet.child("dimension")
     corners = range_of(dimension.get("ref", "")) if dimension is not None else None
     if dimension is None or corners is None or not painter.inserted:

@@ -22,7 +22,7 @@ from audit.report.workbook.patch.ooxml import (
 from audit.report.workbook.patch.package import Package
 from audit.report.workbook.patch.properties import custom_property, set_custom_property
 from audit.report.workbook.patch.relations import relate, targets
-from audit.report.workbook.patch.styles import Former
+from audit.report.workbook.patch.styles import Former, MarkedCells
 from audit.report.workbook.patch.workbook_part import SheetEntry, WorkbookPart
 
 PROPERTY = "Motor settings audit"
@@ -39,6 +39,7 @@ class Record:
     sheets: tuple[str, ...] = ()
     authors: tuple[str, ...] = ()
     formers: tuple[Former, ...] = ()
+    cells: tuple[MarkedCells, ...] = ()
 
 
 def is_ours(package: Package) -> bool:
@@ -57,7 +58,7 @@ def read_record(book: WorkbookPart) -> Record:
     part = _part(book)
     if part is None:
         return Record()
-    sheets, authors, formers = [], [], []
+    sheets, authors, formers, cells = [], [], [], []
     for child in children(book.package.look(part)):
         if child.tag == f"{{{_NAMESPACE}}}sheet":
             sheets.append(child.get("name", ""))
@@ -65,7 +66,12 @@ def read_record(book: WorkbookPart) -> Record:
             authors.append(child.get("name", ""))
         elif child.tag == f"{{{_NAMESPACE}}}former":
             formers.append(Former(child.text or "", child.get("apply-fill")))
-    return Record(tuple(sheets), tuple(authors), tuple(formers))
+        elif child.tag == f"{{{_NAMESPACE}}}cells" and child.get("former", "").isdigit():
+            addresses = tuple((child.text or "").split())
+            cells.append(
+                MarkedCells(child.get("sheet", ""), child.get("fill", ""), int(child.get("former", "")), addresses)
+            )
+    return Record(tuple(sheets), tuple(authors), tuple(formers), tuple(cells))
 
 
 def write_record(book: WorkbookPart, record: Record) -> None:
@@ -81,6 +87,9 @@ def write_record(book: WorkbookPart, record: Record) -> None:
         element.text = former.fill
         if former.apply_fill is not None:
             element.set("apply-fill", former.apply_fill)
+    for group in record.cells:
+        attributes = {"sheet": group.sheet, "fill": group.fill, "former": str(group.former)}
+        etree.SubElement(root, f"{{{_NAMESPACE}}}cells", attributes).text = " ".join(group.addresses)
     part = _part(book)
     if part is not None:
         package.put(part, root)
@@ -90,7 +99,8 @@ def write_record(book: WorkbookPart, record: Record) -> None:
 
 
 def _part(book: WorkbookPart) -> str | None:
-    for part in targets(book.package, book.part, REL_CUSTOM_XML):
+    # some programs hang custom XML on the package instead of the workbook when they save
+    for part in [found for holder in (book.part, "") for found in targets(book.package, holder, REL_CUSTOM_XML)]:
         if book.package.has(part) and _NAMESPACE.encode() in book.package.read(part):
             return part
     return None

@@ -1,7 +1,8 @@
 """Cell formats of a workbook: a cell's own format with our fill, and the way back from it.
 
-Our fills are told from the site's own by their second colour, which a solid fill never shows: it is the
-number under which `Former` says what the cell had before.
+Our fills are told from the site's own by their second colour, which a solid fill never shows: it is the number
+under which `Former` says what the cell had before. Where a program dropped that colour, the record of marked cells
+serves instead.
 """
 
 from __future__ import annotations
@@ -42,6 +43,16 @@ class Former:
     apply_fill: str | None
 
 
+@dataclass(frozen=True)
+class MarkedCells:
+    """Cells of a sheet with one fill (RRGGBB) that had the same before; `former` is the number of its `Former`."""
+
+    sheet: str
+    fill: str
+    former: int
+    addresses: tuple[str, ...]
+
+
 class Styles:
     """The styles part of a workbook, made where it is missing; written anew only if something is added."""
 
@@ -60,6 +71,7 @@ class Styles:
             raise CannotPatch(f"the part {self.part} does not hold styles")
         self.formers = list(formers)
         self._painted: dict[tuple[int, str], int] = {}
+        self.former_of: dict[int, int] = {}
         self._known: dict[str, dict[bytes, int]] = {}
 
     def painted(self, cell_format: int, fill: str) -> int:
@@ -69,12 +81,14 @@ class Styles:
             formats = self.items("cellXfs")
             original = formats[cell_format] if cell_format < len(formats) else formats[0]
             new = copy.deepcopy(original)
-            mark = self._mark(Former(self._fill_of(original), original.get("applyFill")))
+            former = Former(self._fill_of(original), original.get("applyFill"))
+            mark = self._mark(former)
             solid = f'<fill><patternFill patternType="solid"><fgColor rgb="FF{key[1]}"/>'
             solid += f'<bgColor rgb="FF{mark:06X}"/></patternFill></fill>'
             new.set("fillId", str(self.add("fills", self.element(solid))))
             new.set("applyFill", "1")
             self._painted[key] = self.add("cellXfs", new)
+            self.former_of[self._painted[key]] = self.formers.index(former)
         return self._painted[key]
 
     def ways_back(self) -> dict[int, int]:
@@ -85,14 +99,19 @@ class Styles:
             mark = _mark_of(fills, cell_format.get("fillId", "0"))
             if mark is None or not 0 <= mark - OUR_FIRST_MARK < len(self.formers):
                 continue
-            former = self.formers[mark - OUR_FIRST_MARK]
-            original = copy.deepcopy(cell_format)
-            original.set("fillId", str(self.add("fills", self.element(former.fill))))
-            original.attrib.pop("applyFill", "")
-            if former.apply_fill is not None:
-                original.set("applyFill", former.apply_fill)
-            back[number] = self.add("cellXfs", original)
+            back[number] = self._restored(cell_format, self.formers[mark - OUR_FIRST_MARK])
         return back
+
+    def unpainted(self, cell_format: int, fill: str, former: int) -> int:
+        """Number of the format that a cell had before, where its fill still is ours; else of its own."""
+        formats, fills = self.items("cellXfs"), self.items("fills")
+        if cell_format >= len(formats) or former >= len(self.formers):
+            return cell_format
+        number = formats[cell_format].get("fillId", "0")
+        colour = fills[int(number)].find(f"{main('patternFill')}/{main('fgColor')}") if number.isdigit() else None
+        if colour is None or colour.get("rgb", "")[2:].upper() != fill:
+            return cell_format
+        return self._restored(formats[cell_format], self.formers[former])
 
     def items(self, group: str) -> list[etree._Element]:
         """Elements of a group such as `fonts`, which is made where it is missing or empty."""
@@ -127,6 +146,14 @@ class Styles:
     def element(self, text: str) -> etree._Element:
         """Element of the styles' namespace from its text."""
         return etree.fromstring(f'<s xmlns="{MAIN}">{text}</s>')[0]
+
+    def _restored(self, painted: etree._Element, former: Former) -> int:
+        original = copy.deepcopy(painted)
+        original.set("fillId", str(self.add("fills", self.element(former.fill))))
+        original.attrib.pop("applyFill", "")
+        if former.apply_fill is not None:
+            original.set("applyFill", former.apply_fill)
+        return self.add("cellXfs", original)
 
     def _fill_of(self, cell_format: etree._Element) -> str:
         fills = self.items("fills")

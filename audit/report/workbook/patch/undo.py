@@ -6,6 +6,7 @@ from audit.report.workbook.patch.cells import with_formats_replaced
 from audit.report.workbook.patch.markup import children
 from audit.report.workbook.patch.notes import take_back_notes
 from audit.report.workbook.patch.ooxml import REL_CALCULATION_CHAIN
+from audit.report.workbook.patch.painting import unpaint_sheet
 from audit.report.workbook.patch.properties import list_worksheets
 from audit.report.workbook.patch.record import Record, marked_sheets
 from audit.report.workbook.patch.relations import reachable, relations, targets, unrelate
@@ -17,18 +18,24 @@ from audit.report.workbook.patch.worksheet import Worksheet
 def take_back(book: WorkbookPart, styles: Styles, record: Record) -> None:
     """Remove our sheets and give cells and notes back what they had."""
     ours = [sheet for sheet in marked_sheets(book) if sheet.name in record.sheets]
-    for sheet in reversed(ours):
-        _remove(book, sheet)
-    list_worksheets(book.package, [], [sheet.name for sheet in ours], first=True)
+    for gone in reversed(ours):
+        _remove(book, gone)
+    list_worksheets(book.package, [], [gone.name for gone in ours], first=True)
     back = styles.ways_back()
     for entry in book.sheets():
         if entry.part is not None:
-            _restore(book, entry.part, back, set(record.authors))
+            sheet = Worksheet(book.package, entry.part)
+            changed = take_back_notes(book.package, sheet, set(record.authors))
+            if back:
+                changed |= _restore_formats(sheet, back)
+            else:
+                changed |= unpaint_sheet(sheet, styles, [group for group in record.cells if group.sheet == entry.name])
+            if changed:
+                sheet.save()
 
 
-def _restore(book: WorkbookPart, part: str, back: dict[int, int], authors: set[str]) -> None:
-    sheet = Worksheet(book.package, part)
-    changed = take_back_notes(book.package, sheet, authors)
+def _restore_formats(sheet: Worksheet, back: dict[int, int]) -> bool:
+    changed = False
     rows = sheet.data[sheet.start : sheet.end]
     restored = with_formats_replaced(rows, sheet.prefix, back)
     if restored is not rows:
@@ -39,8 +46,7 @@ def _restore(book: WorkbookPart, part: str, back: dict[int, int], authors: set[s
         if style.isdigit() and int(style) in back:
             column.set("style", str(back[int(style)]))
             changed = True
-    if changed:
-        sheet.save()
+    return changed
 
 
 def _remove(book: WorkbookPart, sheet: SheetEntry) -> None:

@@ -11,7 +11,7 @@ import pytest
 from openpyxl import load_workbook
 from python_calamine import CalamineError, CalamineWorkbook, SheetTypeEnum
 
-from audit.report.workbook.patch import CannotPatch, Mark, annotate_copy
+from audit.report.workbook.patch import CannotPatch, Mark, annotate_copy, our_sheet_names
 from audit.report.workbook.patch.package import Package
 from audit.report.workbook.patch.workbook_part import WorkbookPart
 from tests.report.workbook.patch.test_fidelity import PUBLIC_WORKBOOKS, RICH_MARKS
@@ -70,6 +70,14 @@ def test_library_finds_fills_notes_and_sheets(workbook: Callable[..., Path], rep
     assert "a start reaches 1,020 A" in book["Motors"]["B2"].comment.text
 
 
+def resaved(source: Path, folder: Path) -> Path:
+    """The workbook as a spreadsheet program saves it."""
+    profile, out = folder / "profile", folder / "out"
+    command = [str(SOFFICE), f"-env:UserInstallation={profile.as_uri()}", "--headless", "--convert-to", "xlsx"]
+    subprocess.run([*command, "--outdir", str(out), str(source)], check=True, capture_output=True, timeout=170)
+    return out / f"{source.stem}.xlsx"
+
+
 @pytest.mark.slow
 @pytest.mark.skipif(SOFFICE is None, reason="LibreOffice is not installed")
 @pytest.mark.parametrize("suffix", [".xlsx", ".xlsm"])
@@ -78,10 +86,7 @@ def test_spreadsheet_program_opens_and_saves_a_copy(
 ) -> None:
     target = tmp_path / f"copy{suffix}"
     annotate_copy(workbook(rich_parts(macros=suffix == ".xlsm"), f"rich{suffix}"), target, RICH_MARKS, report)
-    profile, out = tmp_path / "profile", tmp_path / "out"
-    command = [str(SOFFICE), f"-env:UserInstallation={profile.as_uri()}", "--headless", "--convert-to", "xlsx"]
-    subprocess.run([*command, "--outdir", str(out), str(target)], check=True, capture_output=True, timeout=170)
-    book = load_workbook(out / "copy.xlsx")
+    book = load_workbook(resaved(target, tmp_path))
     assert book.sheetnames == ["Cover", "Findings", "Motors (audit)", "Motors", "Lists"]
     motors = book["Motors"]
     for address, fill in (("B2", "FFC7CE"), ("C3", "FFEB9C"), ("A6", "FFEB9C"), ("E9", "FFC7CE")):
@@ -92,3 +97,23 @@ def test_spreadsheet_program_opens_and_saves_a_copy(
     assert book["Findings"]["C2"].value == "=1+1"
     assert book["Findings"]["C2"].data_type == "s" or book["Findings"]["C2"].quotePrefix
     assert motors["C2"].value == "=B2*1.7"
+
+
+@pytest.mark.slow
+@pytest.mark.skipif(SOFFICE is None, reason="LibreOffice is not installed")
+def test_copy_that_a_program_saved_is_still_annotated_anew(
+    workbook: Callable[..., Path], report: Path, tmp_path: Path
+) -> None:
+    once, twice = tmp_path / "once.xlsx", tmp_path / "twice.xlsx"
+    annotate_copy(workbook(rich_parts()), once, RICH_MARKS, report)
+    saved = resaved(once, tmp_path)
+    assert our_sheet_names(saved) == {"Cover", "Findings", "Motors (audit)"}
+    annotate_copy(saved, twice, [Mark("Motors", 4, 3, "FFC7CE", "new finding")], report)
+    book = load_workbook(twice)
+    assert book.sheetnames == ["Cover", "Findings", "Motors (audit)", "Motors", "Lists"]
+    motors = book["Motors"]
+    assert motors["C4"].fill.fgColor.rgb == "FFFFC7CE"
+    assert [motors[address].fill.fill_type for address in ("B2", "C2", "C3", "E9")] == [None] * 4
+    assert motors["A6"].fill.fgColor.rgb == "FFDDEBF7"
+    assert motors["B2"].comment.text.rstrip() == "Checked on site"
+    assert motors["E9"].comment is None
