@@ -18,11 +18,15 @@ from audit.intake.resolve.tables import Tables
 from audit.vocabulary.quantities import vocabulary
 
 
+REPEATED = ("table", "quantity", "group", "state", "unit", "base", "header")
+
+
 def resolve(gathered: Gathered) -> Fleet:
     """Resolve the readings of a site to primary values of its motors, relays, buses and starts."""
     ledger = Ledger(gathered.book)
-    known = gathered.readings["quantity"].isin(list(vocabulary().quantities))
-    laid = lay(gathered.readings[known], ledger)
+    # these columns hold few different words: as categories they are compared as integers
+    readings = gathered.readings.astype(dict.fromkeys(REPEATED, "category"))
+    laid = lay(readings[readings["quantity"].isin(list(vocabulary().quantities))], ledger)
     tables = Tables(laid, gathered.book, ledger).resolve()
     return Fleet(
         site=gathered.site,
@@ -83,5 +87,4 @@ def _kept(laid: Laid, tables: Mapping[str, Table]) -> pd.DataFrame:
         ["table", "quantity", "group", "state", "number", "text", "unit", "base", "written", "cell", "header"]
     ]
     kept = kept.assign(subject=subject, key=keys, row=row, value=values)
-    names = ("table", "quantity", "group", "state", "unit", "base", "header", "subject")
-    return kept.astype(dict.fromkeys(names, "category")).reset_index(drop=True)
+    return kept.astype({"subject": "category"}).reset_index(drop=True)

@@ -49,7 +49,7 @@ def bare_doubts(
     doubtful = bare & (values > 0) & _doubtful(quantity, values, beside)
     if not doubtful.any():
         return values
-    columns = pd.Series(pd.factorize(readings["header"].astype(str))[0])
+    columns = pd.Series(pd.factorize(readings["header"])[0])
     share = pd.Series(doubtful[bare]).groupby(columns[bare].to_numpy()).mean()
     doubtful |= bare & columns.isin(share.index[share > 0.5]).to_numpy() & ~np.isnan(values)
     answers: tuple[str, ...] = ("s", "min")

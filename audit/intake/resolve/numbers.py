@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
 import numpy as np
@@ -44,21 +44,26 @@ def convert(quantity: Quantity, readings: pd.DataFrame, beside: Beside, ledger: 
     bare = np.zeros(len(readings), dtype=bool)
     told = ((readings["state"] == "value") & readings["number"].notna()).to_numpy()
     numbers = readings["number"].to_numpy(dtype=np.float64)
-    inertia = dimension_of(quantity) == "inertia"
-    written = [readings["unit"].astype(str), readings["base"].astype(str)]
-    if inertia:
-        written.append(readings["header"].astype(str))
-    keys = pd.MultiIndex.from_arrays(written)
-    codes, unique = pd.factorize(keys)
-    for code, key in enumerate(unique):
-        rows = np.flatnonzero((codes == code) & told)
-        if len(rows) == 0:
-            continue
+    names = ["unit", "base", "header"] if dimension_of(quantity) == "inertia" else ["unit", "base"]
+    for rows, key in _written_alike(readings, names, told):
         plan = plan_of(quantity.name, *key)
         part = (numbers[rows] + plan.offset) * plan.factor
-        values[rows] = _by_way(quantity, plan, part, readings.iloc[rows], _at(beside, rows), ledger, str(key[0]))
+        values[rows] = _by_way(quantity, plan, part, readings.iloc[rows], _at(beside, rows), ledger, key[0])
         bare[rows] = plan.way is Way.BARE
     return Converted(values, bare)
+
+
+def _written_alike(
+    readings: pd.DataFrame, names: list[str], told: NDArray[np.bool_]
+) -> Iterator[tuple[NDArray[np.intp], tuple[str, ...]]]:
+    """Give the places of the readings that are told and written in the same words, and these words."""
+    codes = np.zeros(len(readings), dtype=np.int64)
+    for name in names:
+        words = readings[name].astype("category").cat
+        codes = codes * (len(words.categories) + 1) + words.codes.to_numpy()
+    for code in np.unique(codes[told]).tolist():
+        rows = np.flatnonzero((codes == code) & told)
+        yield rows, tuple(str(readings[name].iloc[rows[0]]) for name in names)
 
 
 def _at(beside: Beside, rows: NDArray[np.intp]) -> Beside:
