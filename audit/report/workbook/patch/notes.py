@@ -90,7 +90,7 @@ def take_back_notes(package: Package, sheet: Worksheet, authors: set[str]) -> bo
         for comment in ours:
             _cut(comment)
             number = comment.get("authorId", "")
-            author = names[int(number)] if number.isdigit() and int(number) < len(names) else ""
+            author = names[int(number)].strip() if number.isdigit() and int(number) < len(names) else ""
             cell = cell_of(comment.get("ref", ""))
             if not note_text(comment) and author in {*authors, ""} and cell is not None:
                 gone.add(cell)
