@@ -17,7 +17,6 @@ from audit.intake.resolve.rows import Laid, lay
 from audit.intake.resolve.tables import Tables
 from audit.vocabulary.quantities import vocabulary
 
-
 REPEATED = ("table", "quantity", "group", "state", "unit", "base", "header")
 
 

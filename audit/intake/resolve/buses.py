@@ -56,7 +56,7 @@ def bus_rows(records: Iterable[Record], telling: set[int], motors: MotorRows, le
         else:
             told.row_of_record[record.number] = named(record.bus.text)
     wanted = [motors.first(row, "bus") for row in range(len(motors.keys))]
-    told.motor_bus = joined(wanted, names, told.keys, "bus", ledger)
+    told.motor_bus = joined(wanted, names, told.keys, "bus", ledger).rows
     for row, of_motor in enumerate(motors.records):
         speaking = [record for record in of_motor if record.number in telling]
         if speaking and told.motor_bus[row] < 0:
@@ -87,9 +87,11 @@ def start_rows(records: Iterable[Record], motors: MotorRows, ledger: Ledger) -> 
             continue
         told.row_of_record[record.number] = len(named)
         named.append(record.motor)
-    told.start_motor = joined(named, motors.names, motors.keys, "motor", ledger)
+    met = joined(named, motors.names, motors.keys, "motor", ledger)
+    told.start_motor = met.rows
     told.keys = [f"{name.text} start {number}" for name, number in zip(named, _counted(named), strict=True)]
-    _complain_strangers(named, told.start_motor, ledger)
+    strangers = (met.rows < 0) & ~met.ambiguous
+    _complain_strangers([named[row] for row in strangers.nonzero()[0].tolist()], ledger)
     return told
 
 
@@ -102,11 +104,10 @@ def _counted(named: list[Name]) -> list[int]:
     return numbers
 
 
-def _complain_strangers(named: list[Name], motors: Integers, ledger: Ledger) -> None:
+def _complain_strangers(named: list[Name], ledger: Ledger) -> None:
     strangers: dict[str, list[Name]] = {}
-    for name, motor in zip(named, motors.tolist(), strict=True):
-        if motor < 0:
-            strangers.setdefault(exact(name.text), []).append(name)
+    for name in named:
+        strangers.setdefault(exact(name.text), []).append(name)
     for names in strangers.values():
         ledger.complain(
             names[0].cell,

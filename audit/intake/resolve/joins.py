@@ -4,15 +4,14 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from audit.fleet.column import Integers
 from audit.intake.resolve.ledger import Ledger
-from audit.intake.resolve.names import Names, exact, join
+from audit.intake.resolve.names import Joined, Names, exact, join
 from audit.intake.resolve.records import Name
 
 
 def joined(
     children: Sequence[Name | None], parents: Names, parent_names: Sequence[str], what: str, ledger: Ledger
-) -> Integers:
+) -> Joined:
     """Give the row that each name means, NO_ROW for none; say what was folded and what is open, once a name."""
     met = join([None if child is None else child.text for child in children], parents)
     said: set[str] = set()
@@ -36,4 +35,4 @@ def joined(
                 f"{what} '{child.text}' may be one of several rows of the list, or is spelled in several ways",
                 f"Which {what} is meant? Nothing is joined to it until then.",
             )
-    return met.rows
+    return met

@@ -94,7 +94,7 @@ def relay_rows(
             register.relays[register.named(record.relay)].add(record)
     named = [motors.first(row, "relay") for row in range(len(motors.keys))]
     names = [relay.name.text for relay in register.relays]
-    register.serves[:] = joined(named, register.names, names, "relay", ledger)
+    register.serves[:] = joined(named, register.names, names, "relay", ledger).rows
     _by_motor_names(listed, register)
     _by_own_name(register)
     _by_cubicle(register)
@@ -108,7 +108,7 @@ def relay_rows(
 def _by_motor_names(listed: list[Record], register: RelayRegister) -> None:
     """Records that name their motor: of the relay they name, of the motor's relay, or of one that bears its tag."""
     motors = register.motors
-    rows = joined([record.motor for record in listed], motors.names, motors.keys, "motor", register.ledger)
+    rows = joined([record.motor for record in listed], motors.names, motors.keys, "motor", register.ledger).rows
     for record, motor in zip(listed, rows.tolist(), strict=True):
         if record.relay is not None:
             register.serve(motor, register.named(record.relay))
@@ -133,7 +133,7 @@ def _by_own_name(register: RelayRegister) -> None:
     """Relays that bear the tag of a motor."""
     motors, waiting = register.motors, register.waiting()
     names = [register.relays[relay].name for relay in waiting]
-    rows = joined(names, motors.names, motors.keys, "motor", register.ledger)
+    rows = joined(names, motors.names, motors.keys, "motor", register.ledger).rows
     for relay, motor in zip(waiting, rows.tolist(), strict=True):
         register.serve(motor, relay)
 
