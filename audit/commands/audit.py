@@ -15,6 +15,7 @@ from audit.pipeline import audit_path
 from audit.refusal import Refusal
 from audit.report.record.write import write_json, write_record
 from audit.report.terminal.show import show_audit
+from audit.report.workbook.write import write_workbooks
 
 
 def run_audit(
@@ -55,7 +56,13 @@ def write_outputs(result: Audit, fleet: Path, out: Path) -> list[Path]:
         raise Refusal(
             f"--out {out}: that is the folder of the inputs, which are never written to. Give another folder."
         )
-    return write_record(result, out)
+    written = write_record(result, out)
+    for workbook in write_workbooks(result, out):
+        if workbook.remark:
+            progress_console().print(workbook.remark)
+        if workbook.path.exists():
+            written.append(workbook.path)
+    return written
 
 
 def file_name(site: str) -> str:

@@ -1,1 +1,1 @@
-"""The annotated workbook."""
+"""The annotated workbooks: the site's own workbooks marked, and our sheets in front of the motor list."""

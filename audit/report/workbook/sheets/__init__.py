@@ -1,0 +1,1 @@
+"""Our sheets of the annotated workbook, one a file, built with openpyxl."""

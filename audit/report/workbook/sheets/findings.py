@@ -1,0 +1,82 @@
+"""The findings, one row each, ordered so that one visit does one panel."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from openpyxl.cell import Cell
+from openpyxl.worksheet.worksheet import Worksheet
+
+from audit.findings.finding import Finding, FindingCell
+from audit.report.workbook.sheets.layout import FILLS, LETTERS, MOST_LINKS, fill, link, page, table, title
+
+HEADINGS = (
+    "severity", "bus", "cubicle", "motor", "service", "relay", "function", "what is wrong", "judged", "present",
+    "permissible", "set by", "because", "why", "what to do", "assumptions", "source", "cell", "file", "check",
+)  # fmt: skip
+WIDTHS = (11, 12, 9, 13, 20, 13, 8, 26, 22, 11, 20, 24, 42, 36, 32, 24, 24, 16, 18, 24)
+_CELL, _SEVERITY = 18, 1
+
+
+def write_findings(findings: Sequence[Finding], sheet: Worksheet, site: str, own_file: str) -> None:
+    """Write the findings sheet; `own_file` is the workbook that the sheet goes into, whose cells can be linked to."""
+    row = title(sheet, "Findings", "ordered by bus, cubicle and motor; permissible ranges are not instructions")
+    ordered = sorted(findings, key=lambda f: (f.bus, f.cubicle, f.motor or f.name, f.function, f.check))
+    table(sheet, row, HEADINGS, WIDTHS, (_row(finding) for finding in ordered))
+    for offset, finding in enumerate(ordered, start=1):
+        severity = sheet.cell(row=row + offset, column=_SEVERITY)
+        assert isinstance(severity, Cell)
+        fill(severity, FILLS[finding.severity])
+        place = judged_cell(finding)
+        target = sheet.cell(row=row + offset, column=_CELL)
+        if place is not None and place.file == own_file and offset < MOST_LINKS and isinstance(target, Cell):
+            link(target, place.sheet, place.cell)
+    page(sheet, site)
+
+
+def judged_cell(finding: Finding) -> FindingCell | None:
+    """Give the cell of the value judged, else the first cell that the finding rests on."""
+    for cell in finding.cells:
+        if cell.quantity == finding.judges:
+            return cell
+    return finding.cells[0] if finding.cells else None
+
+
+def set_by(finding: Finding) -> str:
+    """Say which checks set the ends of the permissible range."""
+    ends = []
+    if finding.low_set_by:
+        ends.append(f"low: {finding.low_set_by}")
+    if finding.high_set_by:
+        ends.append(f"high: {finding.high_set_by}")
+    return "\n".join(ends)
+
+
+def _row(finding: Finding) -> list[object]:
+    place = judged_cell(finding)
+    state = f" ({finding.range_state})" if finding.range_state else ""
+    motor = finding.motor or finding.name
+    if finding.setting_group:
+        motor += f" (group {finding.setting_group})"
+    return [
+        f"{LETTERS[finding.severity]}  {finding.severity}",
+        finding.bus,
+        finding.cubicle,
+        motor,
+        finding.service,
+        finding.relay,
+        finding.function,
+        finding.says,
+        finding.label,
+        finding.present_text,
+        finding.range_text + state,
+        set_by(finding),
+        finding.because + (" (provisional)" if finding.provisional else ""),
+        finding.why,
+        finding.remedy,
+        "; ".join(finding.assumptions),
+        finding.source,
+        f"{place.sheet}!{place.cell}" if place else "",
+        place.file if place else "",
+        finding.check,
+    ]

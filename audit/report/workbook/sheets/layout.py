@@ -1,0 +1,97 @@
+"""How our sheets look and print: colours by severity beside their letters, headings, widths, pages."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Sequence
+
+from openpyxl.cell import Cell
+from openpyxl.styles import Alignment, Border, Font, PatternFill, Side
+from openpyxl.utils import get_column_letter
+from openpyxl.worksheet.worksheet import Worksheet
+
+from audit.cautions import SHORT_CAUTION
+
+# tints that differ in lightness as well as in hue, so that they stay apart for colour-blind readers and in grey
+FILLS = {"unsafe": "E8927C", "nuisance": "FFE08A", "inconsistent": "A9CBE8", "observation": "E4E4E4"}
+HEADING_FILL = "3B4A54"
+LETTERS = {"unsafe": "U", "nuisance": "N", "inconsistent": "I", "observation": "O"}
+MOST_LINKS = 60_000
+"""A sheet holds at most 65,530 links."""
+
+_THIN = Side(style="thin", color="B8C0C4")
+_ROW_BORDER = Border(bottom=_THIN)
+_UNPRINTABLE = re.compile(r"[\x00-\x08\x0b\x0c\x0e-\x1f]")
+
+
+def put(sheet: Worksheet, row: int, column: int, value: object, *, bold: bool = False, wrap: bool = True) -> Cell:
+    """Write a value; text never becomes a formula."""
+    cell = sheet.cell(row=row, column=column)
+    assert isinstance(cell, Cell)
+    if isinstance(value, str):
+        cell.value = _UNPRINTABLE.sub(" ", value)[:32_000]
+        cell.data_type = "s"
+    else:
+        cell.value = value  # type: ignore[assignment]
+    cell.alignment = Alignment(vertical="top", wrap_text=wrap)
+    cell.font = Font(name="Calibri", size=10, bold=bold)
+    return cell
+
+
+def fill(cell: Cell, colour: str) -> None:
+    """Fill a cell."""
+    cell.fill = PatternFill("solid", start_color=colour, end_color=colour)
+
+
+def title(sheet: Worksheet, text: str, below: str = "") -> int:
+    """Write a sheet's title and the line below it; give the next free row."""
+    put(sheet, 1, 1, text, wrap=False).font = Font(name="Calibri", size=14, bold=True)
+    put(sheet, 2, 1, below, wrap=False).font = Font(name="Calibri", size=9, italic=True)
+    return 4
+
+
+def table(
+    sheet: Worksheet, first_row: int, headings: Sequence[str], widths: Sequence[float], rows: Iterable[Sequence[object]]
+) -> int:
+    """Write a table with a heading row, filter and frozen headings; give the row below it."""
+    for column, (heading, width) in enumerate(zip(headings, widths, strict=True), start=1):
+        cell = put(sheet, first_row, column, heading)
+        cell.font = Font(name="Calibri", size=10, bold=True, color="FFFFFF")
+        cell.alignment = Alignment(vertical="center", wrap_text=True)
+        fill(cell, HEADING_FILL)
+        sheet.column_dimensions[get_column_letter(column)].width = width
+    row = first_row
+    for values in rows:
+        row += 1
+        for column, value in enumerate(values, start=1):
+            put(sheet, row, column, value).border = _ROW_BORDER
+    sheet.freeze_panes = f"A{first_row + 1}"
+    sheet.auto_filter.ref = f"A{first_row}:{get_column_letter(len(headings))}{max(row, first_row)}"
+    sheet.print_title_rows = f"{first_row}:{first_row}"
+    return row + 1
+
+
+def page(sheet: Worksheet, site: str) -> None:
+    """Set a sheet up for print: landscape, one page wide, caution and page number at the foot."""
+    sheet.page_setup.orientation = "landscape"
+    sheet.page_setup.paperSize = 9
+    sheet.page_setup.fitToWidth = 1
+    sheet.page_setup.fitToHeight = 0
+    sheet.sheet_properties.pageSetUpPr.fitToPage = True  # type: ignore[union-attr]
+    sheet.page_margins.left = sheet.page_margins.right = 0.4
+    sheet.page_margins.top, sheet.page_margins.bottom = 0.5, 0.8
+    left, right, head = sheet.oddFooter.left, sheet.oddFooter.right, sheet.oddHeader.right
+    assert left is not None
+    assert right is not None
+    assert head is not None
+    left.text, left.size = SHORT_CAUTION.replace("&", "&&"), 6
+    right.text = "&P / &N"
+    head.text, head.size = site.replace("&", "&&"), 8
+    sheet.sheet_view.showGridLines = False
+
+
+def link(cell: Cell, sheet_name: str, address: str) -> None:
+    """Link a cell to a cell of the same workbook."""
+    quoted = sheet_name.replace("'", "''")
+    cell.hyperlink = f"#'{quoted}'!{address}"
+    cell.font = Font(name="Calibri", size=10, underline="single", color="1F4E79")

@@ -1,0 +1,93 @@
+"""Write the annotated workbooks: copies without loss where that is possible, a report workbook of our own otherwise."""
+
+from __future__ import annotations
+
+import tempfile
+from collections.abc import Sequence
+from dataclasses import dataclass
+from pathlib import Path
+
+from openpyxl import Workbook
+from openpyxl.worksheet.worksheet import Worksheet
+
+from audit.findings.audit import Audit
+from audit.findings.finding import Finding
+from audit.findings.render import FindingRenderer
+from audit.report.workbook.marks import marks_by_file
+from audit.report.workbook.patch import CannotPatch, annotate_copy
+from audit.report.workbook.sheets.cover import write_cover
+from audit.report.workbook.sheets.findings import write_findings
+from audit.report.workbook.sheets.lists import write_checks, write_data_to_collect, write_inputs
+from audit.report.workbook.sheets.motors import write_motors
+from audit.report.workbook.sheets.ranges import write_ranges
+
+PATCHABLE = (".xlsx", ".xlsm")
+
+
+@dataclass(frozen=True, slots=True)
+class WrittenWorkbook:
+    """A workbook that was written, or the reason why a copy was not."""
+
+    path: Path
+    remark: str = ""
+
+
+def write_workbooks(audit: Audit, folder: Path) -> list[WrittenWorkbook]:
+    """Write an annotated copy of each workbook that holds a judged cell, our sheets in front of the motor list."""
+    findings = list(FindingRenderer(audit).all())
+    marks = marks_by_file(audit, findings)
+    motor_file = _motor_file(audit)
+    written: list[WrittenWorkbook] = []
+    with tempfile.TemporaryDirectory() as scratch:
+        for item in audit.fleet.inputs:
+            source = Path(item.path)
+            if item.file != motor_file and item.file not in marks:
+                continue
+            report = Path(scratch) / "sheets.xlsx"
+            build_sheets(audit, findings, item.file, whole=item.file == motor_file).save(report)
+            target = folder / f"{source.stem}-annotated{source.suffix}"
+            try:
+                if source.suffix.casefold() not in PATCHABLE:
+                    raise CannotPatch(f"{source.suffix} files cannot be marked without loss")
+                annotate_copy(source, target, marks.get(item.file, []), report)
+                written.append(WrittenWorkbook(target))
+            except CannotPatch as reason:
+                written += _apart(audit, findings, item.file, motor_file, folder, str(reason))
+    return written
+
+
+def _apart(
+    audit: Audit, findings: Sequence[Finding], file: str, motor_file: str, folder: Path, reason: str
+) -> list[WrittenWorkbook]:
+    """Write our sheets as a workbook of their own where the site's cannot be marked without loss."""
+    if file != motor_file:
+        return [WrittenWorkbook(folder / file, f"no marked copy of {file}: {reason}; see the findings sheet")]
+    target = folder / "findings.xlsx"
+    build_sheets(audit, findings, "", whole=True).save(target)
+    return [WrittenWorkbook(target, f"no marked copy of {file}: {reason}; our sheets stand in a workbook of their own")]
+
+
+def _motor_file(audit: Audit) -> str:
+    cells = audit.fleet.tables["motor"].columns["motor"].cell
+    for address in cells.tolist():
+        place = audit.fleet.book.place(address)
+        if place is not None:
+            return place.file
+    return ""
+
+
+def build_sheets(audit: Audit, findings: Sequence[Finding], own_file: str, *, whole: bool) -> Workbook:
+    """Build our sheets for one workbook: all of them for the motor list, cover and findings for the others."""
+    book = Workbook()
+    cover = book.active
+    assert isinstance(cover, Worksheet)
+    cover.title = "Audit"
+    write_cover(audit, cover)
+    write_findings(findings, book.create_sheet("Findings"), audit.fleet.site, own_file)
+    if whole:
+        write_motors(audit, list(findings), book.create_sheet("Motors"))
+        write_ranges(audit, book.create_sheet("Ranges"))
+        write_data_to_collect(audit, book.create_sheet("Data to collect"))
+        write_inputs(audit, book.create_sheet("Inputs"))
+        write_checks(audit, book.create_sheet("Checks applied"))
+    return book
