@@ -89,6 +89,14 @@ def checks(
     raise typer.Exit(run_checks(name, verify=verify, as_json=json_out, rules=rules))
 
 
+@app.command()
+def sample(folder: Annotated[Path, typer.Argument(metavar="DIR", help="A folder that does not exist yet.")]) -> None:
+    """Put a copy of the sample fleet, an invented site with planted defects, into a folder to try the tool on."""
+    from audit.commands.sample import run_sample
+
+    raise typer.Exit(run_sample(folder))
+
+
 def main() -> None:
     """Run the command line; wrong input gives one clear message on stderr and exit 2."""
     try:

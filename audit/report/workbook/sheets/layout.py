@@ -80,7 +80,10 @@ def page(sheet: Worksheet, site: str) -> None:
     sheet.sheet_properties.pageSetUpPr.fitToPage = True  # type: ignore[union-attr]
     sheet.page_margins.left = sheet.page_margins.right = 0.4
     sheet.page_margins.top, sheet.page_margins.bottom = 0.5, 0.8
-    left, right, head = sheet.oddFooter.left, sheet.oddFooter.right, sheet.oddHeader.right
+    foot, top = sheet.oddFooter, sheet.oddHeader
+    assert foot is not None
+    assert top is not None
+    left, right, head = foot.left, foot.right, top.right
     assert left is not None
     assert right is not None
     assert head is not None
