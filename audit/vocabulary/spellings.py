@@ -53,7 +53,7 @@ class Spellings:
     """The whole table."""
 
     dimensions: Mapping[str, Dimension]
-    bases: Mapping[str, str]
+    bases: Mapping[str, tuple[str, ...]]
     open_bases: frozenset[str]
     also: Mapping[str, str]
 
@@ -71,7 +71,10 @@ def fold_unit(text: str) -> str:
 def spellings() -> Spellings:
     """Read the table once."""
     table = tomllib.loads(files("audit.vocabulary").joinpath("unit_spellings.toml").read_text("utf-8"))
-    bases = {fold_unit(word): base for base, words in table.pop("bases").items() for word in words}
+    bases: dict[str, tuple[str, ...]] = {}
+    for base, listed in table.pop("bases").items():
+        for word in dict.fromkeys(fold_unit(word) for word in listed):
+            bases[word] = (*bases.get(word, ()), base)
     open_bases = frozenset(fold_unit(word) for words in table.pop("open_bases").values() for word in words)
     also = table.pop("also")
     dimensions = {}
@@ -141,8 +144,7 @@ def read_units(text: str) -> tuple[tuple[str, UnitReading], ...]:
     sided = _sided(text)
     if found or sided:
         return (*found, *sided)
-    multiple = _multiple(text)
-    return (("ratio", multiple),) if multiple else ()
+    return tuple(("ratio", multiple) for multiple in _multiples(text))
 
 
 def read_unit(text: str, quantity: Quantity) -> UnitReading | None:
@@ -159,9 +161,9 @@ def read_unit(text: str, quantity: Quantity) -> UnitReading | None:
     """
     readings = read_units(text)
     for dimension in dimensions_for(quantity):
-        for name, reading in readings:
-            if name == dimension:
-                return reading
+        found = [reading for name, reading in readings if name == dimension]
+        if found:
+            return next((reading for reading in found if reading.base in quantity.bases), found[0])
     return None
 
 
@@ -204,26 +206,25 @@ def _sided(text: str) -> tuple[tuple[str, UnitReading], ...]:
     )
 
 
-def _multiple(text: str) -> UnitReading | None:
+def _multiples(text: str) -> tuple[UnitReading, ...]:
     """Read 'x FLA', '% of CT', 'pu', 'FLA %' and a bare base such as 'FLA'."""
     written = " ".join(text.translate(_SMALL).strip(" ()[]").split())
     for pattern, unit in ((_MULTIPLE, "x"), (_GLUED_MULTIPLE, "x"), (_PER_CENT, "pct")):
         match = pattern.fullmatch(written)
         if match:
-            base = _base(match["base"])
-            if base is not None:
-                return UnitReading(unit, base)
+            return tuple(UnitReading(unit, base) for base in _bases(match["base"]))
     match = _AFTER.fullmatch(written)
     if match:
-        base = _base(match["base"])
-        return UnitReading("pct" if "%" in written or "ercent" in written else "x", base) if base is not None else None
-    named = spellings().bases.get(fold_unit(written))
-    return UnitReading("x", named) if named not in (None, "primary", "secondary") else None
+        unit = "pct" if "%" in written or "ercent" in written else "x"
+        return tuple(UnitReading(unit, base) for base in _bases(match["base"]))
+    if fold_unit(written) == "motor":
+        return ()
+    return tuple(UnitReading("x", base) for base in _bases(written) if base)
 
 
-def _base(text: str) -> str | None:
+def _bases(text: str) -> tuple[str, ...]:
+    """Give the bases that words may name: "" for none or an open one, empty where they are no base at all."""
     folded = fold_unit(text)
     if not folded or folded in spellings().open_bases:
-        return ""
-    base = spellings().bases.get(folded)
-    return None if base in ("primary", "secondary") else base
+        return ("",)
+    return tuple(base for base in spellings().bases.get(folded, ()) if base not in ("primary", "secondary"))
