@@ -92,11 +92,11 @@ class FindingRenderer:
             unit=unit.symbol,
             low=low,
             high=high,
-            range_text=range_text(low, high, unit),
+            range_text=requirement.text if requirement.kind == "must_be" else range_text(low, high, unit),
             low_set_by=low_by,
             high_set_by=high_by,
             range_state=state,
-            margin_pct=margin_pct(code.present, low, high),
+            margin_pct=None if requirement.kind == "must_be" else margin_pct(code.present, low, high),
             because=self._because(requirement, code, check, present_text, unit),
             why=check.why,
             remedy=check.remedy,
@@ -246,6 +246,9 @@ class FindingRenderer:
             low = code.low if code.low == code.low else low
             high = code.high if code.high == code.high else high
         return low, high, low_by, high_by, ", ".join(state)
+
+    def _kind(self, code: FindingCode) -> str:
+        return self.audit.outcomes[code.outcome].judged[code.requirement].requirement.kind
 
     def _set_by(self, band: SettingRange, row: int) -> tuple[str, str]:
         names = []

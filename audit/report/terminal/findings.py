@@ -17,7 +17,7 @@ from audit.findings.render import FindingRenderer
 from audit.report.terminal.style import MEANING, STYLE, WIDE, counted, severity_word
 
 MOST_LINES = 10
-MOST_NAMES = 6
+MOST_NAMES = 4
 
 
 def print_findings(audit: Audit, console: Console, *, everything: bool = False) -> None:
@@ -59,6 +59,8 @@ def _merged(findings: Iterable[Finding]) -> list[tuple[list[str], Finding]]:
         name = finding.motor or finding.name
         if finding.subject in ("sisters", "peers") and finding.motor:
             name = f"{finding.motor} of {finding.name}"
+        elif finding.relay and finding.relay != name:
+            name += f" ({finding.relay})"
         if finding.setting_group:
             name += f" (group {finding.setting_group})"
         key = (finding.label, finding.present_text, finding.range_text)
@@ -93,7 +95,7 @@ def _table(lines: list[tuple[list[str], Finding]], width: int) -> Table:
         reason = finding.because
         if finding.provisional:
             reason += " (provisional: " + "; ".join(finding.assumptions or ("rests on an assumption",)) + ")"
-        place = _place(finding)
+        place = _place(finding) if len(names) == 1 else ""
         cells = [_names(names)]
         if with_range:
             state = f" ({finding.range_state})" if finding.range_state else ""
