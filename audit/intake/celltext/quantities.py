@@ -36,7 +36,7 @@ _DURATION = re.compile(
 )
 _NUMBER = re.compile(rf"(?P<sign>[-+]?)\s?(?P<numeral>{NUMERAL})(?P<rest>.*)", re.DOTALL)
 _RANGE = re.compile(
-    rf"(?P<low>{NUMERAL})(?P<unit>[^\d\n/;|+-]{{0,8}}?)\s*(?:-|\.{{2,3}}|÷|\bto\b|\bthrough\b)\s*(?P<high>{NUMERAL}.*)",
+    rf"(?P<low>{NUMERAL})(?P<unit>(?![eE][-+]?\d)[^\d\n/;|+-]{{0,8}}?)\s*(?:-|\.{{2,3}}|÷|\bto\b|\bthrough\b)\s*(?P<high>{NUMERAL}.*)",
     re.IGNORECASE,
 )
 _NEXT_VALUE = re.compile(r"\s*(?:/|\n|;|\||&|\band\b|,\s)\s*(?=[-+<>~]?\s?[.,]?\d)")

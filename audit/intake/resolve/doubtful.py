@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 from audit.fleet.column import Floats
 from audit.intake.resolve.bases import Beside
 from audit.intake.resolve.ledger import Ledger
-from audit.intake.resolve.numbers import BASE_WORDS, unit_words
+from audit.intake.resolve.numbers import BASE_SPELLINGS, unit_words
 from audit.vocabulary.quantities import Quantity
 from audit.vocabulary.spellings import dimension_of
 
@@ -52,10 +52,10 @@ def bare_doubts(
     columns = pd.Series(pd.factorize(readings["header"])[0])
     share = pd.Series(doubtful[bare]).groupby(columns[bare].to_numpy()).mean()
     doubtful |= bare & columns.isin(share.index[share > 0.5]).to_numpy() & ~np.isnan(values)
-    answers: tuple[str, ...] = ("s", "min")
+    answers: tuple[str, ...] = ('unit = "s"', 'unit = "min"')
     about = "may be seconds or minutes"
     if quantity.name not in TIME_CONSTANTS:
-        answers = (BASE_WORDS["primary"], *(BASE_WORDS[base] for base in quantity.bases))
+        answers = _answers(quantity, float(np.median(values[doubtful])))
         about = f"has no unit and is hardly {unit_words(quantity)} on the primary side"
     ledger.ask_by_column(
         readings[doubtful],
@@ -64,6 +64,15 @@ def bare_doubts(
         answers,
     )
     return np.where(doubtful, np.nan, values)
+
+
+def _answers(quantity: Quantity, typical: float) -> tuple[str, ...]:
+    """Give what fleet.toml may say of the unit: primary, secondary, or a multiple or per cent of each base."""
+    own = unit_words(quantity)
+    sign = "x" if typical <= LOOKS_LIKE_A_MULTIPLE else "%"
+    bases = (f"{sign} {BASE_SPELLINGS[base]}" for base in quantity.bases if base != "secondary")
+    sides = [f"{own} {side}" for side in ("pri", "sec") if side == "pri" or "secondary" in quantity.bases]
+    return tuple(f'unit = "{unit}"' for unit in (*sides, *bases))
 
 
 def _doubtful(quantity: Quantity, values: Floats, beside: Beside) -> NDArray[np.bool_]:

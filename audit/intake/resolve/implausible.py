@@ -16,7 +16,8 @@ from audit.vocabulary.quantities import Quantity
 from audit.vocabulary.spellings import conversion, dimension_of, spellings
 
 MOST_CAUSES = 3
-UNIT_WORDS = {"x": "a multiple", "pct": "%", "c": "°C", "f": "°F", "mm2": "mm²", "cycles": "cycles"}
+MULTIPLE = "a multiple of its base"
+UNIT_WORDS = {"pct": "%", "c": "°C", "f": "°F", "mm2": "mm²", "cycles": "cycles"}
 
 
 def withhold_implausible(
@@ -60,7 +61,7 @@ def withhold_implausible(
             readings.loc[numbers],
             f"{known[name].label}: '{{written}}' would be plausible as {cause}",
             "Is this column, or are these cells, in another unit? The values are withheld until then.",
-            (cause, "as written"),
+            (f'unit = "{cause}"',) if cause != MULTIPLE else (),
         )
 
 
@@ -99,7 +100,7 @@ def likely_causes(quantity: Quantity, number: object, unit: str) -> tuple[str, .
             slip = factor[0] / written[0] if written else factor[0]
             found.append((abs(abs(np.log10(slip)) - 3.0), UNIT_WORDS.get(name, _spelled(own, name))))
     if quantity.bases and 0.05 <= number <= 15:
-        found.append((3.0, "a multiple of its base"))
+        found.append((3.0, MULTIPLE))
     return tuple(word for _, word in sorted(found)[:MOST_CAUSES])
 
 

@@ -17,6 +17,16 @@ from audit.vocabulary.quantities import Quantity, vocabulary
 from audit.vocabulary.spellings import dimension_of, spellings
 from audit.vocabulary.wire_sizes import awg_mm2
 
+BASE_SPELLINGS = {
+    "full_load": "FLA",
+    "ct": "CT",
+    "earth_ct": "earth CT",
+    "motor_voltage": "motor voltage",
+    "system_voltage": "system voltage",
+    "vt": "VT",
+    "device": "device rating",
+}
+"""Bases as an answer in fleet.toml spells them."""
 BASE_WORDS = {
     "full_load": "full load (FLA)",
     "ct": "the CT primary",
@@ -120,18 +130,20 @@ def _per_mva() -> float:
 
 def _ask(quantity: Quantity, plan: Plan, part: Floats, readings: pd.DataFrame, ledger: Ledger) -> Floats:
     if plan.way is Way.OPEN_UNIT and not quantity.bases:
-        answers = tuple(spellings().dimensions[dimension_of(quantity) or "inertia"].units)
+        answers = tuple(
+            f'unit = "{unit}"' for unit in spellings().dimensions[dimension_of(quantity) or "inertia"].units
+        )
         ledger.ask_by_column(readings, f"{quantity.label}: '{{header}}' names no unit", "In which unit is it?", answers)
     elif plan.way is Way.OPEN_UNIT:
         ledger.ask_by_column(
             readings,
             f"{quantity.label}: '{{written}}' of {BASE_WORDS[plan.base]}",
             "Is it a multiple or per cent?",
-            ("multiple", "per cent"),
+            tuple(f'unit = "{sign} {BASE_SPELLINGS[plan.base]}"' for sign in ("x", "%")),
         )
     else:
         possible = (*quantity.bases, *OWN_BASES.get(quantity.name, ()))
-        allowed = tuple(BASE_WORDS[base] for base in possible if base != "secondary")
+        allowed = tuple(f'base = "{base}"' for base in possible if base != "secondary")
         of = f", {BASE_WORDS[plan.base]} is no base of it" if plan.way is Way.WRONG_BASE else ""
         ledger.ask_by_column(
             readings,
@@ -148,7 +160,7 @@ def _say_lacking(quantity: Quantity, plan: Plan, base: Base, readings: pd.DataFr
             readings[base.open],
             f"{quantity.label}: '{{written}}' may be a multiple of the phase CT or of the earth-fault CT",
             "Of which CT? The values are withheld until then.",
-            (BASE_WORDS["ct"], BASE_WORDS["earth_ct"]),
+            ('base = "earth_ct"', "the source of the earth-fault current, in the relay list"),
         )
     lacking = np.isnan(base.values) if base.open is None else np.isnan(base.values) & ~base.open
     if lacking.any():

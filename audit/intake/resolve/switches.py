@@ -41,11 +41,11 @@ def switches() -> Iterator[Switch]:
             yield Switch(quantity, tuple(setting for setting in found if setting is not None))
 
 
-def switch(one: Switch, picked: Mapping[str, Picked], zeros: Mapping[str, NDArray[np.bool_]], ledger: Ledger) -> Bytes:
+def switch(one: Switch, picked: Mapping[str, Picked], ledger: Ledger) -> Bytes:
     """Settle in place whether a trip or alarm is on; give the basis of each row.
 
-    A number says on, a word for off says off, '-' or 'N/A' says not used: off, as an assumption. A nought that
-    may mean off says nothing. A column of its own goes before, unless it says on where the pickup says off.
+    A number says on, a word for off says off, '-' or 'N/A' says not used: off, as an assumption. A column of
+    its own goes before; where it says on and the pickup says off, nobody knows.
     """
     own = picked[one.on.name]
     basis = np.full(len(own.values), STATED, dtype=np.int8)
@@ -54,10 +54,9 @@ def switch(one: Switch, picked: Mapping[str, Picked], zeros: Mapping[str, NDArra
     own.values[unused], basis[unused] = NO, ASSUMED
     for setting in one.settings:
         shown = picked[setting.name]
-        nought = zeros.get(setting.name, np.zeros(len(own.values), dtype=bool))
         open_ = (own.state == NOT_READ) & (shown.state != NOT_READ)
         for state, code in ((VALUE, YES), (OFF, NO), (NOT_USED, NO)):
-            own.values[open_ & (shown.state == state) & ~nought] = code
+            own.values[open_ & (shown.state == state)] = code
         basis[open_ & (shown.state == NOT_USED)] = ASSUMED
         own.cell[open_] = shown.cell[open_]
         own.reading[open_] = shown.reading[open_]

@@ -34,8 +34,6 @@ from audit.intake.resolve.rows import Laid
 from audit.intake.resolve.switches import as_codes, switch, switches
 from audit.vocabulary.quantities import Quantity, vocabulary
 
-NOUGHT_MAY_MEAN_OFF = ("trip_pickup", "alarm_pickup", "trip_delay", "alarm_delay")
-
 
 class Tables:
     """The values of all quantities while they are being resolved."""
@@ -54,7 +52,6 @@ class Tables:
         self.none = laid.readings.iloc[:0]
         self.picked: dict[str, Picked] = {}
         self.basis: dict[str, Bytes] = {}
-        self.noughts: dict[str, NDArray[np.bool_]] = {}
         self.parents: dict[tuple[str, str], Integers] = {}
 
     def resolve(self) -> dict[str, Table]:
@@ -70,8 +67,7 @@ class Tables:
         self._alarms_said_with_trips()
         self._withhold([quantity for quantity in rest if quantity.name != "group_active"])
         for one in switches():
-            self.basis[one.on.name] = switch(one, self.picked, self.noughts, self.ledger)
-        self._ask_noughts()
+            self.basis[one.on.name] = switch(one, self.picked, self.ledger)
         self._windings()
         self._groups()
         return {
@@ -111,13 +107,6 @@ class Tables:
         self.picked[quantity.name] = pick(quantity, readings, values, missing, self.ledger)
 
     def _numbers(self, quantity: Quantity, readings: pd.DataFrame) -> Floats:
-        nought = (readings["number"] == 0) & (readings["state"] == "value")
-        low = quantity.plausible[0] if quantity.plausible else 0.0
-        if nought.any() and quantity.part in NOUGHT_MAY_MEAN_OFF and low > 0:
-            mark = np.zeros(self._size(quantity), dtype=bool)
-            mark[readings.loc[nought, "row"]] = True
-            self.noughts[quantity.name] = mark
-            readings = readings.assign(number=readings["number"].mask(nought))
         known: dict[str, Floats] = {}
 
         def beside(name: str) -> Floats:
@@ -197,19 +186,6 @@ class Tables:
                 if "al" in text.casefold() and truth_of(text, "alarm_on") == YES:
                     other.values[row], other.state[row] = YES, VALUE
                     other.cell[row], other.reading[row] = trip.cell[row], trip.reading[row]
-
-    def _ask_noughts(self) -> None:
-        for name, mark in self.noughts.items():
-            quantity = self.quantities[name]
-            on = next((o for o in switches() if quantity in o.settings), None)
-            open_ = mark if on is None else mark & (self.picked[on.on.name].values != NO)
-            numbers = self.picked[name].reading[open_]
-            self.ledger.ask_by_column(
-                self.readings.loc[numbers[numbers >= 0]],
-                f"{quantity.label}: '{{written}}'",
-                "Does 0 mean that it is off? Whether it is on counts as unknown until then.",
-                ("off", "as written"),
-            )
 
     def _windings(self) -> None:
         column = self.picked["winding"]

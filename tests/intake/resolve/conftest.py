@@ -64,7 +64,7 @@ class Site:
             if isinstance(cell, (int, float)):
                 number = float(cell)
             else:
-                read = read_number_text(written)
+                read = read_number_text(written, decimal_comma=False)
                 state, number = STATE_OF_KIND.get(read.kind, "value"), read.number
                 unit = read.unit_text or header_unit
         else:
@@ -93,7 +93,7 @@ class Site:
         return resolve(self.gathered())
 
 
-@pytest.fixture
+@pytest.fixture(scope="session")
 def site() -> Callable[[], Site]:
     """A site without any sheet."""
     return Site

@@ -34,7 +34,7 @@ def test_an_implausible_value_is_withheld_and_its_slip_is_named(site, quantity, 
     complaint = fleet.complaints[0]
     assert (complaint.quantity, complaint.key, complaint.cell, complaint.weight) == (quantity, "P-1", "B2", "withheld")
     assert complaint.advice.split("plausible as ")[1].split(":")[0].split(" or ")[0] == cause
-    assert fleet.questions[0].answers[0] == cause
+    assert fleet.questions[0].answers == (f'unit = "{cause}"',)
 
 
 def test_one_bad_row_never_hides_the_others(site):
@@ -158,7 +158,7 @@ def test_inertia_without_a_unit_is_asked_under_wk2_and_a_quarter_under_gd2(site)
     readings.loc[readings["quantity"] == "motor_inertia_kgm2", "header"] = "WK2"
     fleet = resolve(gathered)
     assert np.isnan(column(fleet, "motor", "motor_inertia_kgm2")[0])
-    assert "lbft2" in fleet.questions[0].answers
+    assert 'unit = "lbft2"' in fleet.questions[0].answers
 
 
 def test_a_known_word_within_a_free_text_is_taken_and_shown(site):

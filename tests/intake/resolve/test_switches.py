@@ -70,19 +70,6 @@ def test_on_beside_a_pickup_that_says_off_is_a_complaint(site):
     assert [complaint.quantity for complaint in fleet.complaints] == ["jam_trip_on"]
 
 
-def test_nought_at_a_pickup_is_asked(site):
-    fleet = relay(site, jam_trip_pickup_a="0 A")
-    assert columns(fleet)["jam_trip_on"].values.tolist() == [UNKNOWN]
-    assert np.isnan(columns(fleet)["jam_trip_pickup_a"].values[0])
-    assert [question.answers for question in fleet.questions] == [("off", "as written")]
-
-
-def test_nought_at_the_pickup_of_an_element_that_is_off_is_no_question(site):
-    fleet = relay(site, jam_trip_on="No", jam_trip_pickup_a="0 A")
-    assert columns(fleet)["jam_trip_on"].values.tolist() == [NO]
-    assert fleet.questions == ()
-
-
 def test_a_delay_of_nought_is_a_value_where_it_is_plausible(site):
     found = columns(relay(site, short_circuit_trip_pickup_a="1200 A", short_circuit_trip_delay_s="0 s"))
     assert found["short_circuit_trip_delay_s"].values.tolist() == [0.0]
