@@ -9,14 +9,13 @@ from audit.report.workbook.patch.annotate import (
     our_sheet_names,
 )
 from audit.report.workbook.patch.refusal import CannotPatch
-from audit.report.workbook.patch.text import escape_text, storable_text, strip_our_note
+from audit.report.workbook.patch.text import storable_text, strip_our_note
 
 __all__ = [
     "AnnotationOutcome",
     "CannotPatch",
     "Mark",
     "annotate_copy",
-    "escape_text",
     "is_our_output",
     "names_for_report",
     "our_sheet_names",

@@ -7,11 +7,11 @@ from collections.abc import Callable, Mapping
 
 from audit.fleet.addresses import a1
 from audit.report.workbook.patch.tags import (
-    INSIDE_TAG,
     Source,
     Tag,
     attribute,
     cells,
+    cells_by_address,
     rows,
     with_attribute,
 )
@@ -64,7 +64,7 @@ class Painter:
         pieces: list[bytes] = []
         done = last_end = row.after
         outside = False
-        for cell in cells(self._source, row):
+        for cell in cells_by_address(self._source, row, waiting[::-1]) or cells(self._source, row):
             while waiting and waiting[-1] < cell.number:
                 pieces += data[done : cell.start], self._new_cell(row.number, waiting[-1], row_format, fills)
                 waiting.pop()
@@ -114,17 +114,14 @@ def with_formats_replaced(data: bytes, prefix: bytes, replaced: Mapping[int, int
     if not replaced:
         return data
     numbers = b"|".join(str(number).encode() for number in replaced)
-    if not re.search(rb"\ss\s*=\s*[\"'](?:" + numbers + rb")[\"']", data):
-        return data
-    tag = re.compile(rb"<" + re.escape(prefix) + rb"(?:c|row)(?=\s)(" + INSIDE_TAG + rb")>")
+    tag = re.compile(
+        rb"(<" + re.escape(prefix) + rb"(?:c|row)(?=\s)(?:[^>\"']|\"[^\"]*\"|'[^']*')*?)"
+        rb"(\ss\s*=\s*)[\"'](" + numbers + rb")[\"']"
+    )
 
     def replace(found: re.Match[bytes]) -> bytes:
-        former = attribute(found[1], b"s")
-        if former is None or not former.isdigit() or int(former) not in replaced:
-            return found[0]
-        new = replaced[int(former)]
-        attributes = with_attribute(found[1], b"s", str(new).encode() if new else None)
-        return found[0][: found.start(1) - found.start()] + attributes + b">"
+        new = replaced[int(found[3])]
+        return found[1] + (b'%b"%d"' % (found[2], new) if new else b"")
 
     return tag.sub(replace, data)
 

@@ -145,11 +145,11 @@ def _cut(comment: etree._Element) -> None:
     start = 0
     for piece in pieces:
         text = piece.text or ""
-        kept = "".join(
-            letter
-            for position, letter in enumerate(text, start)
-            if not any(first <= position < last for first, last in spans)
-        )
+        kept, position = "", 0
+        for first, last in spans:
+            kept += text[position : max(first - start, position)]
+            position = max(last - start, position)
+        kept += text[position:]
         start += len(text)
         if kept == text:
             continue

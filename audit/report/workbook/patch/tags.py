@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from functools import lru_cache
 from typing import NamedTuple
 
-from audit.fleet.addresses import column_number
+from audit.fleet.addresses import a1, column_number
 from audit.report.workbook.patch.refusal import CannotPatch
 
 INSIDE_TAG = rb"[^>\"']*(?:(?:\"[^\"]*\"|'[^']*')[^>\"']*)*"
@@ -82,6 +82,24 @@ def cells(source: Source, row: Tag) -> Iterator[Tag]:
         reference = _REFERENCE.fullmatch(stated.strip()) if stated else None
         number = _column(reference[1]) if reference else number + 1
         yield tag._replace(number=number)
+
+
+def cells_by_address(source: Source, row: Tag, columns: Sequence[int]) -> list[Tag] | None:
+    """Cells of some columns found by their address, as it is usually written; None where one is not found so."""
+    if source.nested:
+        return None
+    data = source.data
+    opening, _ = _patterns(source.prefix + b"c")
+    found = []
+    for column in columns:
+        start = data.find(b'<%bc r="%b"' % (source.prefix, a1(row.number, column).encode()), row.after, row.end)
+        tag = opening.match(data, start, row.end) if start >= 0 else None
+        if tag is None:
+            return None
+        empty = tag[1].endswith(b"/")
+        attributes = tag[1][:-1] if empty else tag[1]
+        found.append(Tag(column, start, tag.end(), tag.end(), attributes, empty))
+    return found
 
 
 def content_end(source: Source, row: Tag) -> int:

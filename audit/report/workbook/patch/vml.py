@@ -26,7 +26,7 @@ _TYPE_OF_TEXT_BOXES = (
     '<v:path gradientshapeok="t" o:connecttype="rect"/></v:shapetype>'
 )
 _SHAPE_NUMBER = re.compile(rb"_x0000_s([0-9]{1,9})")
-_LAST_TAG = re.compile(rb"</(?:[\w.-]+:)?xml\s*>(?!.*</(?:[\w.-]+:)?xml\s*>)", re.DOTALL)
+_ROOT_CLOSES = re.compile(rb"</(?:[\w.-]+:)?xml\s*>")
 _BLOCKS = re.compile(rb"(<(?:[\w.-]+:)?idmap\b[^>]*?\sdata\s*=\s*[\"'])([0-9, ]*)")
 _CELL_OF_OURS = re.compile(r"<x:Row>(\d+)</x:Row><x:Column>(\d+)</x:Column>")
 
@@ -41,13 +41,18 @@ class VmlDrawing:
         content = _empty(_free_block(package)) if is_new else package.read(part)
         self._raw = content
         self._root = _well_formed(content)
-        if self._root is None and (b"\0" in content or not _LAST_TAG.search(content)):
+        if self._root is None and (b"\0" in content or not _ROOT_CLOSES.search(content)):
             raise CannotPatch(f"the drawing {part}, which holds the boxes of notes, is corrupt")
         facts = self._root if self._root is not None else parse_leniently(content)
         self._facts = facts if facts is not None else etree.Element("xml")
         self._taken = {int(found) for found in _SHAPE_NUMBER.findall(content)}
         self._own_blocks = _blocks_of(content)
         self._numbers = self._free_numbers()
+        # prefixes declared on each shape again would double the size of a drawing of many notes
+        declared = (
+            self._root is not None and {"v": VML, "o": VML_OFFICE, "x": VML_EXCEL}.items() <= self._root.nsmap.items()
+        )
+        self._opening = "<v:shape " if declared else OUR_SHAPE_OPENS
         self.editable = self._root is not None
 
     def notes(self) -> dict[tuple[int, int], etree._Element]:
@@ -66,7 +71,7 @@ class VmlDrawing:
         """Add a shape; the text given follows its opening, namespaces and number."""
         number = next(self._numbers)
         self._taken.add(number)
-        self._additions.append(f'{OUR_SHAPE_OPENS}id="_x0000_s{number}" type="#{TEXT_BOX_TYPE}" {shape_rest}</v:shape>')
+        self._additions.append(f'{self._opening}id="_x0000_s{number}" type="#{TEXT_BOX_TYPE}" {shape_rest}</v:shape>')
 
     def remove_notes(self, cells: set[tuple[int, int]]) -> None:
         """Take the shapes of notes out; from a drawing that is not well formed only those that we added."""
@@ -99,25 +104,18 @@ class VmlDrawing:
             and self._additions
         ):
             self._additions.insert(0, _TYPE_OF_TEXT_BOXES)
-        if self._root is None:
-            last = _LAST_TAG.search(self._raw)
-            assert last is not None
-            added = "".join(self._additions).encode("ascii")
-            raw = self._raw[: last.start()] + added + self._raw[last.start() :]
-            self._package.put(self.part, [_BLOCKS.sub(rb"\g<1>" + self._blocks_text(), raw, count=1)])
-            return
-        for text in self._additions:
-            self._root.append(etree.fromstring(text))
-        for blocks in self._root.iter(f"{{{VML_OFFICE}}}idmap"):
-            blocks.set("data", self._blocks_text().decode())
-            break
-        # prefixes declared on each shape again would double the size of a drawing of many notes
-        etree.cleanup_namespaces(
-            self._root,
-            top_nsmap={"v": VML, "o": VML_OFFICE, "x": VML_EXCEL},
-            keep_ns_prefixes=["v", "o", "x", *(prefix for prefix in self._root.nsmap if prefix)],
-        )
-        self._package.put(self.part, [serialise(self._root)])
+        if self._root is not None:
+            for blocks in self._root.iter(f"{{{VML_OFFICE}}}idmap"):
+                blocks.set("data", self._blocks_text().decode())
+                break
+            self._root.text = self._root.text or ""
+            self._raw = serialise(self._root)
+            last = self._raw.rindex(b"</")
+        else:
+            self._raw = _BLOCKS.sub(rb"\g<1>" + self._blocks_text(), self._raw, count=1)
+            last = [found.start() for found in _ROOT_CLOSES.finditer(self._raw)][-1]
+        added = "".join(self._additions).encode("ascii")
+        self._package.put(self.part, [self._raw[:last], added, self._raw[last:]])
 
     def _blocks_text(self) -> bytes:
         return ",".join(str(block) for block in self._own_blocks).encode()

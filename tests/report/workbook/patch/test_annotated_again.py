@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable
 from pathlib import Path
 
@@ -152,3 +153,16 @@ def test_text_written_around_our_note_stays(workbook: Write, report: Path, tmp_p
     text = load_workbook(twice)["Motors"]["B2"].comment.text
     assert text.count("finding") == 1
     assert strip_our_note(text) == "Checked on site \nagreed, R.E."
+
+
+def test_calculation_chain_that_names_our_sheet_goes_with_it(once: Path, report: Path, tmp_path: Path) -> None:
+    """A program adds our sheets to the chain when someone types a formula there; a chain to nowhere is damage."""
+    parts = read_parts(once)
+    cover = re.search(rb'<sheet name="Cover" sheetId="(\d+)"', parts["xl/workbook.xml"])
+    assert cover
+    entry = b'<c r="B9" i="' + cover[1] + b'"/></calcChain>'
+    parts["xl/calcChain.xml"] = parts["xl/calcChain.xml"].replace(b"</calcChain>", entry)
+    annotate_copy(write_parts(tmp_path / "typed.xlsx", parts), tmp_path / "twice.xlsx", FIRST, report)
+    after = read_parts(tmp_path / "twice.xlsx")
+    assert "xl/calcChain.xml" not in after
+    assert b"calcChain" not in after["xl/_rels/workbook.xml.rels"] + after["[Content_Types].xml"]
