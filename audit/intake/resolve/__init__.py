@@ -7,7 +7,7 @@ from collections.abc import Mapping
 import numpy as np
 import pandas as pd
 
-from audit.fleet.column import NO_ROW, YES, Integers
+from audit.fleet.column import NO_ROW, UNKNOWN, YES, Integers
 from audit.fleet.fleet import Complaint, Fleet, Question, Table
 from audit.intake.gathered import Gathered
 from audit.intake.resolve.groups import group_key
@@ -27,6 +27,7 @@ def resolve(gathered: Gathered) -> Fleet:
     readings = gathered.readings.astype(dict.fromkeys(REPEATED, "category"))
     laid = lay(readings[readings["quantity"].isin(list(vocabulary().quantities))], ledger)
     tables = Tables(laid, gathered.book, ledger).resolve()
+    _say_unjudged_groups(laid.relays, tables["relay"], ledger)
     return Fleet(
         site=gathered.site,
         tables=tables,
@@ -47,6 +48,27 @@ def _distinct(complaints: list[Complaint]) -> tuple[Complaint, ...]:
 
 def _distinct_questions(questions: list[Question]) -> tuple[Question, ...]:
     return tuple(dict.fromkeys(questions))
+
+
+def _say_unjudged_groups(relays: RelayRows, table: Table, ledger: Ledger) -> None:
+    """Say which setting groups are judged by nobody, since nothing tells whether they can be selected."""
+    selectable = table.columns["group_selectable"].values
+    unsaid = [
+        row
+        for row, (group, judged) in enumerate(zip(relays.groups, relays.judged, strict=True))
+        if group and not judged and selectable[row] == UNKNOWN
+    ]
+    if unsaid:
+        cells = table.columns["relay_tag"].cell[unsaid]
+        ledger.complain(
+            int(cells[0]),
+            f"{len(unsaid)} setting groups besides the active ones, first '{table.keys[unsaid[0]]}'",
+            "for each, whether an input, communication or logic can select it",
+            "They are not judged until a column 'Group Selectable' says that they can be selected.",
+            quantity="group_selectable",
+            subject="relay",
+            weight="remark",
+        )
 
 
 def _other_groups(relays: RelayRows, table: Table, motor_relay: Integers) -> tuple[tuple[str, Integers], ...]:

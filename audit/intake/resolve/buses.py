@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 
 import numpy as np
@@ -33,8 +33,17 @@ class StartRows:
     start_motor: Integers = field(default_factory=lambda: np.empty(0, dtype=np.int64))
 
 
-def bus_rows(records: Iterable[Record], telling: set[int], motors: MotorRows, ledger: Ledger) -> BusRows:
-    """Find the buses of the bus list, and those that only rows of motors speak of (records `telling`)."""
+def bus_rows(
+    records: Iterable[Record],
+    telling: set[int],
+    motors: MotorRows,
+    said_elsewhere: Mapping[int, Name],
+    ledger: Ledger,
+) -> BusRows:
+    """Find the buses of the bus list, and those that only rows of motors speak of (records `telling`).
+
+    `said_elsewhere` names the bus of motors whose own rows do not, from the rows of their relays.
+    """
     told = BusRows()
     names = Names()
 
@@ -55,7 +64,7 @@ def bus_rows(records: Iterable[Record], telling: set[int], motors: MotorRows, le
             )
         else:
             told.row_of_record[record.number] = named(record.bus.text)
-    wanted = [motors.first(row, "bus") for row in range(len(motors.keys))]
+    wanted = [motors.first(row, "bus") or said_elsewhere.get(row) for row in range(len(motors.keys))]
     told.motor_bus = joined(wanted, names, told.keys, "bus", ledger).rows
     for row, of_motor in enumerate(motors.records):
         speaking = [record for record in of_motor if record.number in telling]

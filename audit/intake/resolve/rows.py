@@ -60,7 +60,13 @@ def lay(readings: pd.DataFrame, ledger: Ledger) -> Laid:
     facts = frozenset(name for name, home in subjects.items() if home == "relay" and name not in LINKING)
     relays = relay_rows(readings, records.values(), motors, ledger, facts)
     of_bus = (subject == "bus") & ~readings["quantity"].isin(LINKING) & (readings["table"] == "motor")
-    buses = bus_rows(records.values(), set(readings.loc[of_bus, "record"].tolist()), motors, ledger)
+    telling = set(readings.loc[of_bus, "record"].tolist())
+    at_relays = {
+        int(relays.relay_motor[relays.rows_of_record[number][0]]): record.bus
+        for number, record in records.items()
+        if record.table == "relay" and record.bus and number in relays.rows_of_record
+    }
+    buses = bus_rows(records.values(), telling, motors, at_relays, ledger)
     starts = start_rows(records.values(), motors, ledger)
 
     numbers = pd.Index(list(records))

@@ -187,3 +187,17 @@ def test_starts_of_strangers_are_said_once_a_tag(site):
     fleet = site().add("motor", [{"motor": "P-1"}]).add("start", starts).fleet()
     assert fleet.links["start", "motor"].tolist() == [-1, -1]
     assert [("'X-9'" in c.found, c.cell) for c in fleet.complaints] == [(False, "B4"), (True, "A2")]
+
+
+def test_a_group_that_may_or_may_not_be_selectable_is_said_to_be_judged_by_nobody(site):
+    rows = [{"relay_tag": "R-1", "group_active": active, "jam_trip_delay_s": "1 s"} for active in ("yes", "no")]
+    fleet = site().add("motor", [{"motor": "P-1", "relay": "R-1"}]).add("relay", rows, groups=["1", "2"]).fleet()
+    assert fleet.other_groups == ()
+    assert [("'R-1 (group 2)'" in c.found, c.weight) for c in fleet.complaints] == [(True, "remark")]
+
+
+def test_a_bus_named_beside_the_relay_serves_a_motor_that_names_none(site):
+    fleet = site().add("motor", [{"motor": "P-1", "relay": "R-1"}, {"motor": "P-2", "relay": "R-2", "bus": "B-2"}])
+    relays = [{"relay_tag": "R-1", "bus": "B-1"}, {"relay_tag": "R-2", "bus": "B-1"}]
+    fleet = fleet.add("relay", relays).add("bus", [{"bus_name": "B-1"}, {"bus_name": "B-2"}]).fleet()
+    assert fleet.links["motor", "bus"].tolist() == [0, 1]
