@@ -99,7 +99,7 @@ def permissible_ranges(outcomes: Iterable[Outcome], workings: Workings) -> dict[
                 greatest=True,
                 active=judged.active,
                 moving=moving,
-                basis=judged.bound_basis,
+                basis=np.maximum(judged.bound_basis, judged.active_basis),
                 wanted=judged.requirement.kind in ("at_least", "above", "equals"),
             )
             _narrow(
@@ -110,7 +110,7 @@ def permissible_ranges(outcomes: Iterable[Outcome], workings: Workings) -> dict[
                 greatest=False,
                 active=judged.active,
                 moving=moving,
-                basis=judged.bound_basis,
+                basis=np.maximum(judged.bound_basis, judged.active_basis),
                 wanted=judged.requirement.kind in ("at_most", "below", "equals"),
             )
     return ranges

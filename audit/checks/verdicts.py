@@ -26,8 +26,10 @@ class Judged:
     requirement: Requirement
     active: NDArray[np.int8]
     """Whether the requirement's own condition holds: 0, 1 (unknown) or 2."""
+    active_basis: NDArray[np.int8]
     holds: NDArray[np.int8]
     basis: NDArray[np.int8]
+    """Basis of what is judged and of its bound; the condition has its own."""
     present: NDArray[np.float64]
     low: NDArray[np.float64]
     high: NDArray[np.float64]
@@ -95,12 +97,16 @@ def _together(judged: tuple[Judged, ...], size: int) -> tuple[NDArray[np.int8], 
     basis = np.zeros(size, dtype=np.int8)
     broken_basis = np.full(size, np.int8(127))
     for one in judged:
-        # a requirement whose condition is no has no say; unknown condition and unmet bound leave it open
-        said = np.where(one.active == NO, YES, np.where(one.active == YES, one.holds, np.maximum(one.holds, UNKNOWN)))
-        said = np.where((one.active == UNKNOWN) & (one.holds == NO), UNKNOWN, said).astype(np.int8)
+        # like 'condition is no, or the bound is met': either alone settles it, and then the better-founded one counts
+        idle = (YES - one.active).astype(np.int8)
+        said = np.maximum(idle, one.holds)
+        settling = np.minimum(
+            np.where(idle == YES, one.active_basis, np.int8(127)), np.where(one.holds == YES, one.basis, np.int8(127))
+        )
+        said_basis = np.where(said == YES, settling, np.maximum(one.active_basis, one.basis)).astype(np.int8)
         broken = said == NO
-        broken_basis[broken] = np.minimum(broken_basis[broken], one.basis[broken])
-        basis = np.maximum(basis, np.where(one.active == NO, np.int8(0), one.basis))
+        broken_basis[broken] = np.minimum(broken_basis[broken], said_basis[broken])
+        basis = np.maximum(basis, said_basis)
         holds = np.minimum(holds, said)
         any_active = np.maximum(any_active, one.active)
     return holds, np.where(holds == NO, broken_basis, basis).astype(np.int8), any_active
@@ -109,20 +115,22 @@ def _together(judged: tuple[Judged, ...], size: int) -> tuple[NDArray[np.int8], 
 def _judge(requirement: Requirement, workings: Workings, subject: str, size: int) -> Judged:
     scope = workings.scope(subject)
     active = np.full(size, YES, dtype=np.int8)
-    basis = np.zeros(size, dtype=np.int8)
+    active_basis = np.zeros(size, dtype=np.int8)
     if requirement.when is not None:
         condition = evaluate(requirement.when, scope)
         active = np.array(_spread(condition.values, size), dtype=np.int8)
-        basis = np.array(_spread(condition.basis, size), dtype=np.int8)
+        active_basis = np.array(_spread(condition.basis, size), dtype=np.int8)
     nothing = np.full(size, np.nan)
     if requirement.kind == "requires" or requirement.judged is None:
         assert requirement.bound is not None
         truth = evaluate(requirement.bound, scope)
         holds = np.array(_spread(truth.values, size), dtype=np.int8)
-        all_basis = np.maximum(basis, _spread(truth.basis, size)).astype(np.int8)
-        return Judged(requirement, active, holds, all_basis, nothing, nothing, nothing, all_basis, scope.deciding)
+        all_basis = np.array(_spread(truth.basis, size), dtype=np.int8)
+        return Judged(
+            requirement, active, active_basis, holds, all_basis, nothing, nothing, nothing, all_basis, scope.deciding
+        )
     judged = evaluate(requirement.judged, scope)
-    basis = np.maximum(basis, _spread(judged.basis, size)).astype(np.int8)
+    basis = np.array(_spread(judged.basis, size), dtype=np.int8)
     deciding = scope.deciding
     if requirement.kind == "must_be":
         wanted = YES if requirement.text == "on" else NO
@@ -130,21 +138,21 @@ def _judge(requirement: Requirement, workings: Workings, subject: str, size: int
         holds = np.where(truth_values == UNKNOWN, UNKNOWN, np.where(truth_values == wanted, YES, NO)).astype(np.int8)
         present = np.where(truth_values == UNKNOWN, np.nan, truth_values / YES)
         target = np.full(size, wanted / YES)
-        return Judged(requirement, active, holds, basis, present, target, target, basis, deciding)
+        return Judged(requirement, active, active_basis, holds, basis, present, target, target, basis, deciding)
     if requirement.kind == "must_be_stated":
         holds = np.where(_spread(judged.missing(), size), NO, YES).astype(np.int8)
-        return Judged(requirement, active, holds, basis, nothing, nothing, nothing, basis, deciding)
+        return Judged(requirement, active, active_basis, holds, basis, nothing, nothing, nothing, basis, deciding)
     assert requirement.bound is not None
     bound = evaluate(requirement.bound, scope)
     bound_basis = np.array(_spread(bound.basis, size), dtype=np.int8)
     basis = np.maximum(basis, bound_basis)
     if judged.sort != "number":
         same = _same_words(judged, bound, size)
-        return Judged(requirement, active, same, basis, nothing, nothing, nothing, bound_basis, deciding)
+        return Judged(requirement, active, active_basis, same, basis, nothing, nothing, nothing, bound_basis, deciding)
     present = np.array(_spread(judged.values, size), dtype=float)
     limit = np.array(_spread(bound.values, size), dtype=float)
     holds, low, high = _against(requirement, present, limit, scope, size)
-    return Judged(requirement, active, holds, basis, present, low, high, bound_basis, deciding)
+    return Judged(requirement, active, active_basis, holds, basis, present, low, high, bound_basis, deciding)
 
 
 def _against(

@@ -10,6 +10,8 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from audit.derivation.bus_members import BUS_FUNCTIONS
+from audit.derivation.curve_text import CURVE_FUNCTIONS
 from audit.derivation.start_records import START_FUNCTIONS
 from audit.engineering import (
     bus_transfer,
@@ -20,6 +22,7 @@ from audit.engineering import (
     ct_accuracy,
     ct_burden,
     ct_false_current,
+    current_scale,
     earth_fault,
     earth_fault_loop,
     insulation_class,
@@ -59,6 +62,7 @@ _MODULES: tuple[tuple[ModuleType, tuple[str, ...]], ...] = (
     ),
     (ct_burden, ("rated_burden_ohm", "standard_burden_ohm")),
     (ct_false_current, ("false_residual_a", "false_differential_a")),
+    (current_scale, ("current_in_a", "current_in_ka")),
     (
         earth_fault,
         ("resistor_current_a", "winding_unprotected_pct"),
@@ -172,5 +176,7 @@ def _described(module: ModuleType, name: str) -> Function:
 FUNCTIONS: dict[str, Function] = {
     **BUILTIN,
     **START_FUNCTIONS,
+    **BUS_FUNCTIONS,
+    **CURVE_FUNCTIONS,
     **{name: _described(module, name) for module, names in _MODULES for name in names},
 }

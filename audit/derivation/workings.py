@@ -11,6 +11,7 @@ import numpy as np
 from audit.derivation.recipes import AUDIT_DATE, Recipe
 from audit.expression.functions import Function, Functions
 from audit.expression.lacking import lacking
+from audit.expression.nodes import Node
 from audit.expression.values import UNKNOWN, YES, Value, evaluate
 from audit.fleet.column import NO_CELL, NO_ROW, STATED, Column, Integers, missing_of
 from audit.fleet.fleet import Fleet
@@ -145,12 +146,27 @@ def expand_lacks(workings: Workings, subject: str, lacks: Mapping[str, Mask]) ->
         quantity = workings.quantities[name]
         child = CHILD_OF.get(subject)
         if quantity.subject == child and workings.fleet.parent_rows(subject, quantity.subject) is None:
-            found = {name: np.ones_like(rows)}
+            found = _lacks_of_children(workings, subject, name)
         else:
             found = workings.data_lacking(subject, name)
         for datum, mask in found.items():
             result[datum] = result.get(datum, np.zeros_like(rows)) | (mask & rows)
     return {datum: mask for datum, mask in result.items() if mask.any()}
+
+
+def _lacks_of_children(workings: Workings, subject: str, name: str) -> dict[str, Mask]:
+    """Give the data that child rows lack, for the rows that these belong to; without a child, the name itself."""
+    child = workings.quantities[name].subject
+    size = workings.fleet.rows(subject)
+    parent = workings.fleet.parent_rows(child, subject)
+    if parent is None:
+        return {name: np.ones(size, dtype=bool)}
+    result: dict[str, Mask] = {name: ~np.isin(np.arange(size), parent)}
+    for datum, lacking_rows in workings.data_lacking(child, name).items():
+        of_rows = parent[lacking_rows]
+        wanted = result.setdefault(datum, np.zeros(size, dtype=bool))
+        wanted[of_rows[of_rows >= 0]] = True
+    return result
 
 
 class SubjectScope:
@@ -176,32 +192,32 @@ class SubjectScope:
             return Value("number", np.array([today]), np.zeros(1, dtype=np.int8))
         return _as_value(self.workings.column(self.subject, name))
 
-    def over_rows(self, function: Function, names: tuple[str, ...]) -> Value:
+    def over_rows(self, function: Function, operands: tuple[Node, ...]) -> Value:
         """Evaluate a function over the child rows of each row of the subject."""
         fleet = self.workings.fleet
         child = CHILD_OF[self.subject]
         parent = fleet.parent_rows(child, self.subject)
-        columns = [self.workings.column(child, name) for name in names]
         if parent is None:
             parent = np.full(fleet.rows(child), NO_ROW, dtype=np.int64)
-        numbers = [_as_numbers(column) for column in columns]
+        values = [evaluate(operand, self.workings.scope(child)) for operand in operands]
+        numbers = [np.broadcast_to(_as_numbers(value), len(parent)) for value in values]
         size = self.rows()
         result, deciding = function.call(numbers, parent, size)
         self.deciding = deciding
         basis = np.full(size, 0, dtype=np.int8)
         linked = parent >= 0
-        for column, number in zip(columns, numbers, strict=True):
+        for value, number in zip(values, numbers, strict=True):
             used = linked & ~np.isnan(number)
-            np.maximum.at(basis, parent[used], column.basis[used])
+            np.maximum.at(basis, parent[used], np.broadcast_to(value.basis, len(parent))[used])
         if function.returns.sort == "truth":
             truth = np.where(np.isnan(result), UNKNOWN, np.where(result > 0, YES, 0)).astype(np.int8)
             return Value("truth", truth, basis)
         return Value("number", result, basis)
 
 
-def _as_numbers(column: Column) -> np.ndarray[tuple[int, ...], np.dtype[np.float64]]:
-    if column.kind == "truth":
-        return np.where(column.values == UNKNOWN, np.nan, column.values / YES)
-    if column.kind in ("choice", "text"):
-        return np.where(column.missing(), np.nan, 1.0)
-    return np.asarray(column.values, dtype=float)
+def _as_numbers(value: Value) -> np.ndarray[tuple[int, ...], np.dtype[np.float64]]:
+    if value.sort == "truth":
+        return np.where(value.values == UNKNOWN, np.nan, value.values / YES)
+    if value.sort in ("choice", "text"):
+        return np.where(value.missing(), np.nan, 1.0)
+    return np.asarray(value.values, dtype=float)

@@ -13,6 +13,8 @@ from audit.vocabulary.units import DIMENSIONLESS
 
 _SAME = Operand("value", "same")
 _PLAIN = Operand("result", "number", DIMENSIONLESS)
+_COUNTED = Operand("counted", "truth", required=False)
+"""Condition of the child rows that count, where not all do."""
 
 
 def _pick(values: tuple[Value, ...], *, greatest: bool) -> Value:
@@ -76,9 +78,8 @@ def _magnitude(value: NDArray[np.float64]) -> NDArray[np.float64]:
     return np.abs(value)
 
 
-def _of_rows(name: str, call: RowFunction, returns: Operand = _SAME, operands: int = 1) -> Function:
-    places = (_SAME,) * operands if operands == 1 else tuple(Operand(f"value {i}", "number") for i in range(operands))
-    return Function(name, call, places, returns, of_rows=True)
+def _of_rows(name: str, call: RowFunction, returns: Operand = _SAME, *further: Operand) -> Function:
+    return Function(name, call, (_SAME, *further), returns, of_rows=True)
 
 
 BUILTIN: dict[str, Function] = {
@@ -100,11 +101,14 @@ BUILTIN: dict[str, Function] = {
         Function("magnitude", _magnitude, (_SAME,), _SAME, reads="magnitude of"),
         _of_rows("greatest_of", rows.greatest),
         _of_rows("least_of", rows.least),
+        _of_rows("greatest_of_all", rows.greatest_of_all),
+        _of_rows("least_of_all", rows.least_of_all),
         _of_rows("total_of", rows.total),
-        _of_rows("median_of", rows.median),
-        _of_rows("count_of", rows.count, _PLAIN),
-        _of_rows("greatest_deviation_of", rows.greatest_deviation, _PLAIN),
-        _of_rows("greatest_robust_score_of", rows.greatest_robust_score, _PLAIN),
+        _of_rows("median_of", rows.median, _SAME, _COUNTED),
+        _of_rows("count_of", rows.count, _PLAIN, _COUNTED),
+        _of_rows("greatest_deviation_of", rows.greatest_deviation, _PLAIN, _COUNTED),
+        _of_rows("greatest_robust_score_of", rows.greatest_robust_score, _PLAIN, _COUNTED),
+        _of_rows("greatest_spread_of_copies_of", rows.greatest_spread_of_copies, _PLAIN, _SAME, _COUNTED),
         _of_rows("any_of", rows.any_yes, Operand("any", "truth")),
     )
 }

@@ -9,12 +9,12 @@ from typing import Any, Literal
 
 from audit.vocabulary.units import DIMENSIONLESS, Unit, unit_of_ending
 
-Sort = Literal["number", "truth", "choice", "same"]
+Sort = Literal["number", "truth", "choice", "text", "same"]
 
 
 @dataclass(frozen=True, slots=True)
 class Operand:
-    """What a function wants in one place: a number in a unit, a truth, a choice, or the unit of its like."""
+    """What a function wants in one place: a number in a unit, a truth, a choice, a text, or the unit of its like."""
 
     name: str
     sort: Sort

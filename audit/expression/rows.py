@@ -15,6 +15,15 @@ RowFunction = Callable[[list[Floats], Integers, int], tuple[Floats, Integers]]
 NO_ROW = -1
 
 
+def counted(values: list[Floats]) -> Floats:
+    """First operand, missing where a condition is given as second one and does not hold.
+
+    >>> counted([np.array([3.0, 5.0, 7.0]), np.array([1.0, 0.0, np.nan])]).tolist()
+    [3.0, nan, nan]
+    """
+    return values[0] if len(values) == 1 else np.where(values[1] == 1.0, values[0], np.nan)
+
+
 def _extreme(values: list[Floats], parent: Integers, parents: int, *, greatest: bool) -> tuple[Floats, Integers]:
     number = values[0]
     usable = np.flatnonzero((parent >= 0) & ~np.isnan(number))
@@ -44,6 +53,49 @@ def least(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats,
     return _extreme(values, parent, parents, greatest=False)
 
 
+def _of_all(values: list[Floats], parent: Integers, parents: int, *, greatest: bool) -> tuple[Floats, Integers]:
+    result, deciding = _extreme(values, parent, parents, greatest=greatest)
+    lacking = parent[(parent >= 0) & np.isnan(values[0])]
+    result[lacking] = np.nan
+    deciding[lacking] = NO_ROW
+    return result, deciding
+
+
+def greatest_of_all(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
+    """Greatest value of the child rows; missing where one of them is missing, for it could be the greatest.
+
+    >>> greatest_of_all([np.array([3.0, 5.0, 2.0, np.nan])], np.array([0, 0, 1, 1]), 2)[0].tolist()
+    [5.0, nan]
+    """
+    return _of_all(values, parent, parents, greatest=True)
+
+
+def least_of_all(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
+    """Least value of the child rows; missing where one of them is missing, for it could be the least."""
+    return _of_all(values, parent, parents, greatest=False)
+
+
+def beside_greatest(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
+    """Second value of the child row whose first value is the greatest; missing where a first value is missing.
+
+    >>> beside_greatest([np.array([3.0, 5.0]), np.array([7.0, 8.0])], np.array([0, 0]), 1)[0].tolist()
+    [8.0]
+    """
+    return _beside(values, greatest_of_all(values[:1], parent, parents)[1])
+
+
+def beside_least(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
+    """Second value of the child row whose first value is the least; missing where a first value is missing."""
+    return _beside(values, least_of_all(values[:1], parent, parents)[1])
+
+
+def _beside(values: list[Floats], deciding: Integers) -> tuple[Floats, Integers]:
+    found = deciding >= 0
+    result = np.full(len(deciding), np.nan)
+    result[found] = values[1][deciding[found]]
+    return result, deciding
+
+
 def total(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
     """Sum of the child rows; missing where one of them is missing or where there is none.
 
@@ -63,7 +115,7 @@ def total(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats,
 
 def count(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
     """Number of child rows with a known value; zero where there is none."""
-    usable = (parent >= 0) & ~np.isnan(values[0])
+    usable = (parent >= 0) & ~np.isnan(counted(values))
     return np.bincount(parent[usable], minlength=parents).astype(float), np.full(parents, NO_ROW, dtype=np.int64)
 
 
@@ -73,7 +125,7 @@ def median(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats
     >>> median([np.array([1.0, 9.0, 2.0, np.nan])], np.array([0, 0, 0, 0]), 1)[0].tolist()
     [2.0]
     """
-    number = values[0]
+    number = counted(values)
     usable = np.flatnonzero((parent >= 0) & ~np.isnan(number))
     order = usable[np.lexsort((number[usable], parent[usable]))]
     members = np.bincount(parent[order], minlength=parents)
@@ -90,28 +142,34 @@ def median(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats
 def greatest_deviation(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
     """Greatest deviation from the median of the child rows, as a share of that median.
 
+    A row alone deviates from nothing: none where its condition leaves out all others, else missing.
+
     >>> result, deciding = greatest_deviation([np.array([100.0, 100.0, 130.0])], np.array([0, 0, 0]), 1)
     >>> round(result.item(), 3), deciding.item()
     (0.3, 2)
     """
-    number = values[0]
-    middle = median(values, parent, parents)[0]
+    number = counted(values)
+    middle = median([number], parent, parents)[0]
     linked = parent >= 0
     share = np.full(len(number), np.nan)
     with np.errstate(all="ignore"):
         own = middle[parent[linked]]
         share[linked] = np.where(own != 0, np.abs(number[linked] - own) / np.abs(own), np.nan)
-    alone = count(values, parent, parents)[0] < 2
+    alone = count([number], parent, parents)[0] < 2
     result, deciding = greatest([share], parent, parents)
     result[alone] = np.nan
     deciding[alone] = NO_ROW
+    if len(values) > 1:
+        left_open = linked & np.isnan(number) & (values[1] != 0.0)
+        settled = np.bincount(parent[left_open], minlength=parents) == 0
+        result[alone & settled] = 0.0
     return result, deciding
 
 
 def greatest_robust_score(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
     """Greatest distance from the median in scaled median absolute deviations, these taken as at least 5 % of it."""
-    number = values[0]
-    middle = median(values, parent, parents)[0]
+    number = counted(values)
+    middle = median([number], parent, parents)[0]
     linked = parent >= 0
     distance = np.full(len(number), np.nan)
     distance[linked] = np.abs(number[linked] - middle[parent[linked]])
@@ -132,7 +190,7 @@ def greatest_spread_of_copies(values: list[Floats], parent: Integers, parents: i
     >>> result.item(), deciding.item()
     (3.0, 0)
     """
-    setting, size = values
+    setting, size = np.round(counted([values[0], *values[2:]]), 6), values[1]
     usable = np.flatnonzero((parent >= 0) & ~np.isnan(setting) & ~np.isnan(size) & (size > 0))
     order = usable[np.lexsort((size[usable], setting[usable], parent[usable]))]
     fresh = np.ones(len(order), dtype=bool)

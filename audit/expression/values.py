@@ -52,8 +52,8 @@ class Scope(Protocol):
         """Give a quantity or a limit."""
         ...
 
-    def over_rows(self, function: Function, names: tuple[str, ...]) -> Value:
-        """Evaluate a function over the rows of a child table."""
+    def over_rows(self, function: Function, operands: tuple[Node, ...]) -> Value:
+        """Evaluate a function over the rows of a child table; its operands are expressions of the child row."""
         ...
 
 
@@ -177,7 +177,9 @@ def _join(operator: str, parts: list[Value]) -> Value:
 
 
 def _handed_over(value: Value) -> NDArray[Any]:
-    """Give a function numbers for numbers and truths, and words for choices."""
+    """Give a function numbers for numbers and truths, and words for choices and texts."""
+    if value.sort == "text":
+        return np.array([text or "" for text in value.values], dtype=object)
     if value.sort == "choice":
         return np.asarray(np.array([*value.choices, ""], dtype=str)[value.values])
     return np.asarray(value.values, dtype=float)
@@ -186,7 +188,7 @@ def _handed_over(value: Value) -> NDArray[Any]:
 def _call(name: str, operands: tuple[Node, ...], scope: Scope) -> Value:
     function = scope.functions[name]
     if function.of_rows:
-        return scope.over_rows(function, tuple(o.name for o in operands if isinstance(o, Name)))
+        return scope.over_rows(function, operands)
     given = [evaluate(operand, scope) for operand in operands]
     if function.tolerant:
         outcome: Value = function.call(*given)

@@ -1,0 +1,93 @@
+"""Curves written into one cell as points, '300 A: 40 s; 600 A: 10 s', read along straight lines on log-log paper."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Callable
+from functools import lru_cache
+
+import numpy as np
+from numpy.typing import NDArray
+
+from audit.engineering.point_curve import current_on_curves_a, time_on_curves_s
+from audit.expression.functions import Function, Operand
+from audit.vocabulary.units import UNITS
+
+Floats = NDArray[np.float64]
+Reader = Callable[[Floats, Floats, Floats], Floats]
+_POINT = re.compile(
+    r"(?P<current>\d+(?:[.,]\d+)?)\s*(?P<kilo>k)?a?\s*[:@/=\s]\s*(?P<time>\d+(?:[.,]\d+)?)\s*(?P<milli>m)?s?",
+    re.IGNORECASE,
+)
+
+
+@lru_cache(maxsize=10_000)
+def points_of_curve(text: str) -> tuple[tuple[float, ...], tuple[float, ...]] | None:
+    """Read the points of a curve: current and time, separated by a colon; points separated by semicolons.
+
+    >>> points_of_curve("300 A: 40 s; 0.6 kA: 900 ms")
+    ((300.0, 600.0), (40.0, 0.9))
+    >>> points_of_curve("see drawing 12") is None
+    True
+    """
+    currents, times = [], []
+    for part in re.split(r"[;\n]", text):
+        if not part.strip():
+            continue
+        point = _POINT.fullmatch(part.strip())
+        if point is None:
+            return None
+        currents.append(_number(point["current"]) * (1000.0 if point["kilo"] else 1.0))
+        times.append(_number(point["time"]) * (0.001 if point["milli"] else 1.0))
+    return (tuple(currents), tuple(times)) if currents else None
+
+
+def _number(text: str) -> float:
+    return float(text.replace(",", "."))
+
+
+def _on_curves(curve: NDArray[np.object_], at: Floats, read: Reader) -> Floats:
+    result = np.full(len(at), np.nan)
+    texts, which = np.unique(curve.astype(str), return_inverse=True)
+    for place, text in enumerate(texts):
+        points = points_of_curve(str(text))
+        if points is None:
+            continue
+        rows = np.flatnonzero(which == place)
+        currents, times = (np.tile(np.array(part), (len(rows), 1)) for part in points)
+        result[rows] = read(at[rows], currents, times)
+    return result
+
+
+def time_on_curve(curve: NDArray[np.object_], current_a: Floats) -> Floats:
+    """Time at a current on a curve given as points; missing outside the points.
+
+    >>> time_on_curve(np.array(["300 A: 40 s; 600 A: 10 s"], dtype=object), np.array([424.264])).round(2).tolist()
+    [20.0]
+    """
+    return _on_curves(curve, current_a, time_on_curves_s)
+
+
+def current_on_curve(curve: NDArray[np.object_], time_s: Floats) -> Floats:
+    """Current at a time on a falling curve given as points; missing outside the points."""
+    return _on_curves(curve, time_s, current_on_curves_a)
+
+
+_CURVE = Operand("curve", "text")
+
+CURVE_FUNCTIONS: dict[str, Function] = {
+    "time_on_curve_s": Function(
+        "time_on_curve_s",
+        time_on_curve,
+        (_CURVE, Operand("current_a", "number", UNITS["a"])),
+        Operand("time", "number", UNITS["s"]),
+        reads="time on the curve",
+    ),
+    "current_on_curve_a": Function(
+        "current_on_curve_a",
+        current_on_curve,
+        (_CURVE, Operand("time_s", "number", UNITS["s"])),
+        Operand("current", "number", UNITS["a"]),
+        reads="current on the curve",
+    ),
+}
