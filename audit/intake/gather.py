@@ -11,8 +11,10 @@ import numpy as np
 from audit.fleet.addresses import NO_CELL, SheetBook
 from audit.fleet.fleet import Complaint, InputFile, Question
 from audit.intake.gathered import CannotRead, ColumnReading, Gathered, SheetReading
+from audit.intake.layouts.block import is_block, known_tags, read_block
+from audit.intake.layouts.long import LongHeading, find_long_heading, long_heading_at, read_long
 from audit.intake.layouts.wide import read_wide
-from audit.intake.opening import SheetGrid, UnreadableWorkbook, WorkbookGrids, find_workbooks, open_workbook
+from audit.intake.opening import SheetGrid, UnreadableWorkbook, find_workbooks, open_workbook
 from audit.intake.recognition.blocks import Readings, frame
 from audit.intake.recognition.cells_to_readings import Source
 from audit.intake.recognition.dictionary import combined_readings
@@ -25,6 +27,10 @@ from audit.intake.resolve.names import exact
 from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map
 
 Progress = Callable[[str], None]
+ORDER = ("wide", "long", "block", "")
+"""Blocks come last: their headings are understood by the tags that lists name."""
+WIDE_ENOUGH = 4.0
+"""A list of settings has a relay, a group, perhaps a tag in common with wide tables; those have more."""
 
 
 @dataclass
@@ -41,17 +47,36 @@ class _Run:
     columns: list[ColumnReading] = field(default_factory=list)
     sheets: list[SheetReading] = field(default_factory=list)
 
+    def tags(self) -> dict[str, tuple[str, str]]:
+        """Give the tags of motors and relays that were read so far."""
+        kinds = {"motor": "motor", "relay": "relay", "relay_tag": "relay"}
+        return known_tags(
+            (kinds[block.quantity], text)
+            for block in self.readings
+            if block.quantity in kinds
+            for text in block.text.tolist()
+            if isinstance(text, str)
+        )
+
 
 @dataclass
 class _Candidate:
-    """A sheet with the place of its headers and the table they fit."""
+    """A sheet with the layout found on it, and the table its headers fit."""
 
     file: str
     grid: SheetGrid
     mapped: MappedSheet | None
-    heading: Heading | None
-    verdict: Verdict | None
-    last_row: int
+    layout: str = ""
+    heading: Heading | None = None
+    verdict: Verdict | None = None
+    listed: LongHeading | None = None
+
+    @property
+    def table(self) -> str:
+        """Give the table that the sheet holds, '' for none."""
+        if self.layout == "wide":
+            return self.verdict.table if self.verdict else ""
+        return "relay" if self.layout else ""
 
 
 def gather(path: Path, progress: Progress | None = None) -> Gathered:
@@ -80,7 +105,7 @@ def gather(path: Path, progress: Progress | None = None) -> Gathered:
         raise CannotRead(run.complaints[0])
     _ensure_motor_list(candidates, path, run)
     tell("recognising tables")
-    for candidate in candidates:
+    for candidate in sorted(candidates, key=lambda candidate: ORDER.index(candidate.layout)):
         _read(candidate, run)
     _must_run(run)
     site = run.map.site or (path.name if path.is_dir() else path.stem)
@@ -107,35 +132,56 @@ def _candidates(file: Path, run: _Run) -> list[_Candidate]:
     try:
         workbook = open_workbook(file)
     except UnreadableWorkbook as error:
-        run.complaints.append(
-            Complaint(file.name, "", "", error.found, error.expected, error.advice, weight="stop")
-        )
+        run.complaints.append(Complaint(file.name, "", "", error.found, error.expected, error.advice, weight="stop"))
         return []
     run.inputs.append(InputFile(file.name, workbook.sha256, str(file)))
     return [
-        candidate for grid in workbook.sheets for candidate in _tables_of(file.name, workbook, grid, run.map)
+        candidate
+        for grid in workbook.sheets
+        # sheets are numbered as they stand in their files, whatever the order of reading
+        if run.book.index(file.name, grid.name) >= 0
+        and (candidate := _candidate(file.name, grid, run.map.sheet(file.name, grid.name))) is not None
     ]
 
 
-def _tables_of(file: str, workbook: WorkbookGrids, grid: SheetGrid, site: SiteMap) -> list[_Candidate]:
-    mapped = site.sheet(file, grid.name)
-    if mapped and mapped.table == "none":
-        return []
-    if not grid.height:
-        return []
-    if mapped and mapped.header_row:
-        heading: Heading | None = heading_at(grid, mapped.header_row, mapped.header_rows)
-    else:
-        heading = find_heading(grid)
-    verdict = table_of(heading) if heading else None
-    if heading and mapped and mapped.table and (verdict is None or verdict.table != mapped.table):
-        verdict = Verdict(mapped.table, 0.0, heading.matches(mapped.table))
-    return [_Candidate(file, grid, mapped, heading, verdict, grid.height)]
+def _candidate(file: str, grid: SheetGrid, mapped: MappedSheet | None) -> _Candidate | None:
+    """Find the layout of a sheet and the table that it holds; the site map rules."""
+    if not grid.height or (mapped and mapped.table == "none"):
+        return None
+    candidate = _Candidate(file, grid, mapped)
+    wanted = mapped.layout if mapped else ""
+    if wanted in ("", "wide"):
+        if mapped and mapped.header_row:
+            candidate.heading = heading_at(grid, mapped.header_row, mapped.header_rows)
+        else:
+            candidate.heading = find_heading(grid)
+        candidate.verdict = _verdict(candidate.heading, mapped)
+    if wanted in ("", "long") and not (mapped and mapped.table not in ("", "relay")):
+        if mapped and mapped.header_row and wanted:
+            candidate.listed = long_heading_at(grid, mapped.header_row)
+        else:
+            candidate.listed = find_long_heading(grid)
+    if candidate.listed and (candidate.verdict is None or candidate.verdict.score < WIDE_ENOUGH):
+        candidate.layout = "long"
+    elif candidate.verdict is not None:
+        candidate.layout = "wide"
+    elif wanted == "block" or (not wanted and is_block(grid)):
+        candidate.layout = "block"
+    return candidate
+
+
+def _verdict(heading: Heading | None, mapped: MappedSheet | None) -> Verdict | None:
+    if heading is None:
+        return None
+    verdict = table_of(heading)
+    if mapped and mapped.table and (verdict is None or verdict.table != mapped.table):
+        return Verdict(mapped.table, WIDE_ENOUGH, heading.matches(mapped.table))
+    return verdict
 
 
 def _ensure_motor_list(candidates: list[_Candidate], path: Path, run: _Run) -> None:
     """Let the best sheet with tags be the motor list where no sheet is one; refuse where none can be."""
-    if any(candidate.verdict and candidate.verdict.table == "motor" for candidate in candidates):
+    if any(candidate.table == "motor" for candidate in candidates):
         return
     offers = [
         (verdict.score, index, verdict)
@@ -146,6 +192,7 @@ def _ensure_motor_list(candidates: list[_Candidate], path: Path, run: _Run) -> N
     if offers:
         _, index, verdict = max(offers, key=lambda offer: (offer[0], -offer[1]))
         candidates[index].verdict = verdict
+        candidates[index].layout = "wide"
         return
     complaint = _nothing(path, "no sheet holds a list of motors", "a sheet with a tag and rated data for each motor")
     raise CannotRead(
@@ -173,23 +220,32 @@ def _read(candidate: _Candidate, run: _Run) -> None:
         run.complaints,
         run.questions,
     )
-    sheet = Sheet(
-        grid, run.book.index(candidate.file, grid.name), source, run.records, day_first=run.map.day_first
-    )
-    heading, verdict = candidate.heading, candidate.verdict
-    if heading is None or verdict is None:
+    sheet = Sheet(grid, run.book.index(candidate.file, grid.name), source, run.records, day_first=run.map.day_first)
+    if not _by_layout(candidate, sheet, run):
         source.remark(-1, "no table was recognised on this sheet", "a table with headers", "It is left unread.")
-        return
-    mapped = _mapped(heading, candidate.mapped)
-    if not read_wide(sheet, heading, verdict.table, verdict.matches, candidate.last_row, mapped):
-        source.remark(-1, "no column names the rows of this sheet", "a column of tags", "It is left unread.")
         return
     _say_hidden(sheet)
     run.readings += sheet.readings
     run.columns += sheet.columns
-    run.sheets.append(
-        SheetReading(candidate.file, grid.name, verdict.table, "wide", heading.first_row, heading.depth)
-    )
+    heading = candidate.heading if candidate.layout == "wide" else None
+    listed = candidate.listed if candidate.layout == "long" else None
+    row = heading.first_row if heading else listed.row if listed else 0
+    depth = heading.depth if heading else 1 if listed else 0
+    run.sheets.append(SheetReading(candidate.file, grid.name, candidate.table, candidate.layout, row, depth))
+
+
+def _by_layout(candidate: _Candidate, sheet: Sheet, run: _Run) -> bool:
+    mapped = candidate.mapped
+    relay, group = (mapped.relay, mapped.group) if mapped else ("", "")
+    if candidate.layout == "long" and candidate.listed:
+        return read_long(sheet, candidate.listed, group, relay)
+    if candidate.layout == "block":
+        return read_block(sheet, run.tags(), relay, group)
+    if candidate.layout == "wide" and candidate.heading and candidate.verdict:
+        columns = _mapped(candidate.heading, mapped)
+        verdict = candidate.verdict
+        return read_wide(sheet, candidate.heading, verdict.table, verdict.matches, sheet.grid.height, columns, group)
+    return False
 
 
 def _mapped(heading: Heading, entry: MappedSheet | None) -> dict[int, Plan]:
@@ -219,13 +275,9 @@ def _say_hidden(sheet: Sheet) -> None:
     if grid.hidden:
         source.remark(-1, "the sheet is hidden", "sheets that are shown", "It is read like the others.")
     if grid.hidden_rows:
-        source.remark(
-            -1, f"{rows_in_words(sorted(grid.hidden_rows))} hidden", "rows that are shown", "They are read."
-        )
+        source.remark(-1, f"{rows_in_words(sorted(grid.hidden_rows))} hidden", "rows that are shown", "They are read.")
     if grid.hidden_columns:
-        source.remark(
-            -1, f"{len(grid.hidden_columns)} columns are hidden", "columns that are shown", "They are read."
-        )
+        source.remark(-1, f"{len(grid.hidden_columns)} columns are hidden", "columns that are shown", "They are read.")
     for note in grid.notes:
         source.remark(-1, note, "a workbook whose cells can be told fully")
 

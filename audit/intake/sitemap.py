@@ -226,9 +226,7 @@ def _check(entries: Mapping[str, Any], known: Mapping[str, type], where: str) ->
         if name not in known:
             raise _wrong(f"{where + ': ' if where else ''}'{name}' is no entry of it", f"one of {', '.join(known)}")
         if not isinstance(value, known[name]) or (known[name] is int and isinstance(value, bool)):
-            raise _wrong(
-                f"{where + ': ' if where else ''}{name} = {value!r}", f"{name} as {_IN_WORDS[known[name]]}"
-            )
+            raise _wrong(f"{where + ': ' if where else ''}{name} = {value!r}", f"{name} as {_IN_WORDS[known[name]]}")
 
 
 _IN_WORDS = {str: "a text", int: "a whole number", list: "a list", bool: "true or false"}

@@ -32,6 +32,8 @@ class Quantity:
     """Folded cell spelling to choice."""
     headers: tuple[str, ...] = ()
     ambiguous_headers: tuple[str, ...] = ()
+    headers_with_unit: tuple[str, ...] = ()
+    """Headers that mean this quantity only where a unit of it is written: 'Rating (kW)'."""
     bases: tuple[str, ...] = ()
     element: str | None = None
     part: str | None = None
@@ -115,6 +117,7 @@ def _quantity(
         spellings=spellings or None,
         headers=tuple(entry.get("headers", ())),
         ambiguous_headers=tuple(entry.get("ambiguous_headers", ())),
+        headers_with_unit=tuple(entry.get("headers_with_unit", ())),
         bases=tuple(entry.get("bases", ())),
         element=element.name if element else None,
         part=entry.get("part"),

@@ -31,6 +31,7 @@ def read_wide(
     matches: Mapping[int, HeaderMatch],
     last_row: int,
     mapped: Mapping[int, Plan] | None = None,
+    group: str = "",
 ) -> bool:
     """Read a table with one row a record; False where no column names the records."""
     first_rows = range(heading.first_data_row, last_row + 1)
@@ -52,6 +53,8 @@ def read_wide(
     if table == "start":
         made = _with_clock(made)
     for block in _by_group(sheet, made, table):
+        if group and table == "relay" and isinstance(block.group, str):
+            block.group = block.group or group
         sheet.keep(block, block.table or table)
     _note_columns(sheet, heading, table, plans, kinds)
     return True
@@ -235,5 +238,3 @@ def _sample(sheet: Sheet, rows: list[int], column: int) -> str:
         if value is not None and cell_text(value):
             return cell_text(value)[:40]
     return ""
-
-

@@ -215,7 +215,9 @@ def _odd(
     """Fill in one cell that is no plain number; give what is wrong with it and what was expected."""
     setting = quantity.role == "setting"
     kind = reading.kind
-    expected = f"{quantity.label}: a number" + (f" in {quantity.unit.symbol}" if quantity.unit and quantity.unit.symbol else "")
+    expected = f"{quantity.label}: a number" + (
+        f" in {quantity.unit.symbol}" if quantity.unit and quantity.unit.symbol else ""
+    )
     made.number[index] = math.nan
     made.state[index] = BAD
     if kind is CellKind.NUMBER:
@@ -256,9 +258,7 @@ def _at_other_voltage(qualifier: str) -> bool:
     return text.startswith("@") and any(c.isdigit() for c in text) and not text.startswith(("@100%", "@1.0", "@1,0"))
 
 
-def _complain(
-    bad: list[tuple[int, str, str]], present: int, cells: Cells, quantity: Quantity, source: Source
-) -> None:
+def _complain(bad: list[tuple[int, str, str]], present: int, cells: Cells, quantity: Quantity, source: Source) -> None:
     """Complain about each bad cell, or once about a column most of which is bad."""
     if len(bad) >= MANY and len(bad) > 0.6 * present:
         index, found, expected = bad[0]
@@ -316,9 +316,7 @@ def _texts(quantity: Quantity, cells: Cells, source: Source) -> Readings:
             made.state[index] = NOT_USED
         elif kind is CellKind.ERROR:
             made.state[index] = BAD
-            source.complain(
-                int(cells.address[index]), reading.remark, quantity.label, ADVICE, quantity.name
-            )
+            source.complain(int(cells.address[index]), reading.remark, quantity.label, ADVICE, quantity.name)
     return _finish(made, cells, source)
 
 

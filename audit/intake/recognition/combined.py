@@ -184,9 +184,7 @@ def _bad(
     )
 
 
-def _ask_once(
-    places: list[int], combined: Combined, cells: Cells, source: Source, idle: dict[int, str]
-) -> None:
+def _ask_once(places: list[int], combined: Combined, cells: Cells, source: Source, idle: dict[int, str]) -> None:
     more = f", and {len(places) - 1} more" if len(places) > 1 else ""
     source.ask(
         int(cells.address[places[0]]),

@@ -9,20 +9,22 @@ from functools import cache
 from importlib.resources import files
 
 from audit.intake.recognition.folding import compact, fold_header
-from audit.vocabulary.quantities import vocabulary
+from audit.vocabulary.quantities import Quantity, vocabulary
 
 TABLES = ("motor", "relay", "bus", "start")
 SHORTEST_COMPACT = 5
+_BUS_WORDS = frozenset({"bus", "system", "fault", "busbar", "incomer", "base", "x/r", "nominal"})
 _RELAY_WORDS = frozenset({"relay", "ied", "group", "export"})
 
 
 @dataclass(frozen=True, slots=True)
 class Entry:
-    """A meaning of a header: a quantity, or the name of a combined reading; sure or only possible."""
+    """A meaning of a header: a quantity or a combined reading; sure, sure with a unit, or only possible."""
 
     name: str
     sure: bool
     combined: bool = False
+    by_unit: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,6 +34,7 @@ class Combined:
     name: str
     tables: tuple[str, ...]
     headers: tuple[str, ...]
+    headers_with_unit: tuple[str, ...]
     quantities: tuple[str, ...]
     order: str
     alone: str
@@ -64,6 +67,7 @@ def combined_readings() -> Mapping[str, Combined]:
             name,
             tuple(entry["tables"]),
             tuple(entry["headers"]),
+            tuple(entry.get("headers_with_unit", ())),
             tuple(entry["quantities"]),
             entry["order"],
             entry.get("alone", ""),
@@ -81,36 +85,46 @@ def _layers(table: str) -> list[dict[str, list[Entry]]]:
         if table in combined.tables:
             for header in combined.headers:
                 own.setdefault(fold_header(header), []).append(Entry(combined.name, True, combined=True))
+            for header in combined.headers_with_unit:
+                meanings = own.setdefault(fold_header(header), [])
+                meanings.append(Entry(combined.name, False, combined=True, by_unit=True))
     for quantity in vocabulary().quantities.values():
-        if quantity.subject == table:
-            layer = own
-        elif (table == "motor" and quantity.subject == "relay") or (table == "relay" and quantity.name in ("motor", "service", "area", "bus")):
-            layer = guests
-        else:
-            continue
-        for sure, headers in ((True, quantity.headers), (False, quantity.ambiguous_headers)):
+        layer = own if quantity.subject == table else guests
+        for sure, by_unit, headers in (
+            (True, False, quantity.headers),
+            (False, True, quantity.headers_with_unit),
+            (False, False, quantity.ambiguous_headers),
+        ):
             for header in headers:
                 folded = fold_header(header)
-                if (
-                    table == "motor"
-                    and quantity.subject == "relay"
-                    and quantity.element is None
-                    and not _RELAY_WORDS & set(folded.split())
-                ):
-                    continue
-                layer.setdefault(folded, []).append(Entry(quantity.name, sure))
+                if layer is own or _may_stand_in(table, quantity, folded):
+                    layer.setdefault(folded, []).append(Entry(quantity.name, sure, by_unit=by_unit))
     return [own, guests]
 
 
+def _may_stand_in(table: str, quantity: Quantity, folded: str) -> bool:
+    """Tell whether a header of another subject may stand in a table: only where its words say whose it is."""
+    words = set(folded.split())
+    if table == "motor" and quantity.subject == "relay":
+        return quantity.element is not None or bool(_RELAY_WORDS & words)
+    if table == "motor" and quantity.subject == "bus":
+        return quantity.name != "bus_name" and bool(_BUS_WORDS & words)
+    return table == "relay" and quantity.name in ("motor", "service", "area", "bus")
+
+
 def _settled(meanings: list[Entry]) -> tuple[Entry, ...]:
-    """Give the meanings of one header: a combined reading wins, a sure one beside another becomes a doubt."""
+    """Give the meanings of one header, each once; two sure ones are a doubt, a combined reading wins over a sure one."""
     for entry in meanings:
-        if entry.combined:
+        if entry.combined and entry.sure:
             return (entry,)
-    names = dict.fromkeys(entry.name for entry in meanings)
-    if len(names) == 1:
-        return (Entry(meanings[0].name, any(entry.sure for entry in meanings)),)
-    return tuple(Entry(name, False) for name in names)
+    once: dict[str, Entry] = {}
+    for entry in meanings:
+        if entry.name not in once or entry.sure:
+            once[entry.name] = entry
+    sure = [entry for entry in once.values() if entry.sure]
+    if len(sure) > 1:
+        return tuple(Entry(entry.name, False, by_unit=True) for entry in once.values())
+    return tuple(sorted(once.values(), key=lambda entry: not entry.sure))
 
 
 @cache

@@ -47,19 +47,21 @@ _SAME_WORD = {
     "starting": "start",
     "maximum": "max",
     "minimum": "min",
-    "locked-rotor": "locked rotor",
     "lockedrotor": "locked rotor",
     "molded": "moulded",
-    "min.": "min",
     "wdg": "winding",
     "setpoint": "setting",
     "settings": "setting",
-    "pick up": "pickup",
+    "alm": "alarm",
+    "alm/trip": "alarm/trip",
+    "trip/alm": "trip/alarm",
 }
 _SIGNS = str.maketrans({"²": "2", "³": "3", "_": " ", "\n": " ", "\r": " ", ":": " ", ";": " ", "*": " ", "|": " "})
 _ABBREVIATION = re.compile(r"\b(\w)\.(?=\w\b)")
 _LAST_DOT = re.compile(r"\b(\w)\.(?!\w)")
 _STAGE_SIGN = re.compile(r"(?<=[\wθδφ]) (?=[<>])|(?<=[<>]) (?=[<>])")
+_CLOSE_UP = re.compile(r"\s*(/)\s*|(?<=@)\s+()")
+_PER_CENT = re.compile(r"(\d)\s+%")
 _SPACES = re.compile(r"\s+")
 _NUMBER_SIGN = re.compile(r"#(?!\d)")
 _NOTE = re.compile(r"(?:\s*(?:\(\s*(?:see )?note s?\d*\s*\)|\(\d\)|\[\d\]|[*†‡¹])+)\s*$", re.IGNORECASE)
@@ -78,6 +80,8 @@ def fold_header(text: str) -> str:
     folded = _NUMBER_SIGN.sub(" no ", folded)
     for sign in ".-()[]{},":
         folded = folded.replace(sign, " ")
+    folded = _CLOSE_UP.sub(lambda match: match[1] or "", folded)
+    folded = _PER_CENT.sub(r"\1%", folded)
     folded = _SPACES.sub(" ", folded).strip()
     folded = _STAGE_SIGN.sub("", folded).strip(" /")
     return " ".join(_SAME_WORD.get(word, word) for word in folded.split(" ")) if folded else ""

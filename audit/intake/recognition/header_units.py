@@ -17,7 +17,32 @@ _TWO_BRACKETS = re.compile(
 )
 _LEADING = re.compile(r"(?P<unit>%|pct|percent)\s+(?P<rest>\S.*)", re.IGNORECASE | re.DOTALL)
 _SURE_WORDS = frozenset(
-    ["kw", "hp", "horsepower", "bhp", "mw", "kv", "volts", "vac", "amps", "ka", "kaic", "rpm", "r/min", "hz", "awg", "kcmil", "mcm", "mm2", "%", "pct", "kva", "mva", "ohm", "ohms"]
+    [
+        "kw",
+        "hp",
+        "horsepower",
+        "bhp",
+        "mw",
+        "kv",
+        "volts",
+        "vac",
+        "amps",
+        "ka",
+        "kaic",
+        "rpm",
+        "r/min",
+        "hz",
+        "awg",
+        "kcmil",
+        "mcm",
+        "mm2",
+        "%",
+        "pct",
+        "kva",
+        "mva",
+        "ohm",
+        "ohms",
+    ]
 )
 _SAME_SIGN = {"min-1": "r/min", "1/min": "r/min", "ka sym": "ka"}
 

@@ -19,23 +19,69 @@ from audit.intake.recognition.settings_grammar import (
     setting_named,
 )
 from audit.vocabulary.quantities import Quantity, vocabulary
-from audit.vocabulary.spellings import UnitReading, read_unit
+from audit.vocabulary.spellings import UnitReading, dimension_of, read_unit, read_units
 
 LONGEST_HEADER = 90
 NEAR = 0.84
 _GROUP = re.compile(
     r"\b(?:setting group|set group|setting grp|group|grp|sg|gr)\s*(?P<group>\d|[a-h])\b|^g(?P<short>[1-8])\b|\bg(?P<last>[1-8])$"
 )
-_LITTLE = frozenset(["data", "details", "detail", "information", "info", "parameters", "parameter", "list", "section", "particulars", "values"])
+_LITTLE = frozenset(
+    [
+        "data",
+        "details",
+        "detail",
+        "information",
+        "info",
+        "parameters",
+        "parameter",
+        "list",
+        "section",
+        "particulars",
+        "values",
+    ]
+)
 _LEADS = {
     "motor": frozenset(["motor", "nameplate", "name", "plate", "rated", "setting", "protection", "relay"]) - {"relay"},
     "relay": frozenset(["relay", "setting", "protection"]),
     "bus": frozenset(["bus", "board", "switchgear", "system"]),
     "start": frozenset(["recorded", "record", "measured", "event"]),
 }
-_LAST = {"motor": frozenset({"np", "nameplate"}), "relay": frozenset(), "bus": frozenset(), "start": frozenset({"recorded", "measured"})}
+_LAST = {
+    "motor": frozenset({"np", "nameplate"}),
+    "relay": frozenset(),
+    "bus": frozenset(),
+    "start": frozenset({"recorded", "measured"}),
+}
 _NEUTRAL = frozenset(
-    ["motor", "nameplate", "name", "plate", "rated", "general", "identification", "electrical", "mechanical", "protection", "setting", "relay", "data", "details", "info", "information", "equipment", "load", "basic", "main", "characteristics", "and", "&", "technical", "machine", "supply"]
+    [
+        "motor",
+        "nameplate",
+        "name",
+        "plate",
+        "rated",
+        "general",
+        "identification",
+        "electrical",
+        "mechanical",
+        "protection",
+        "setting",
+        "relay",
+        "data",
+        "details",
+        "info",
+        "information",
+        "equipment",
+        "load",
+        "basic",
+        "main",
+        "characteristics",
+        "and",
+        "&",
+        "technical",
+        "machine",
+        "supply",
+    ]
 )
 
 
@@ -46,6 +92,8 @@ class HeaderMatch:
     quantity: str = ""
     combined: str = ""
     candidates: tuple[str, ...] = ()
+    by_unit: tuple[str, ...] = ()
+    """Those candidates that a fitting unit settles."""
     unit: UnitReading | None = None
     unit_text: str = ""
     group: str = ""
@@ -83,17 +131,21 @@ def match_header(header: str, table: str) -> HeaderMatch:
     if not text or len(text) > LONGEST_HEADER:
         return NOTHING
     doubt = NOTHING
-    for words, unit_text in split_units(text):
-        folded = fold_header(words)
-        group = ""
-        if table in ("motor", "relay"):
-            folded, group = _without_group(folded)
-        for variant in _variants(folded, table):
-            found = _meaning(variant, words, unit_text, group, table)
-            if found.known:
-                return found
-            if found.candidates and not doubt.candidates:
-                doubt = found
+    # words of the vocabulary first, then settings put together from the words of elements and parts
+    for meaning in (_listed, _composed) if table in ("motor", "relay") else (_listed,):
+        for words, unit_text in split_units(text):
+            folded = fold_header(words)
+            group = ""
+            if table in ("motor", "relay"):
+                folded, group = _without_group(folded)
+            for variant in _variants(folded, table):
+                found = meaning(variant, words, unit_text, group, table)
+                if found.known or found.open_part:
+                    return found
+                if found.candidates and not doubt.candidates:
+                    doubt = found
+        if doubt.candidates:
+            return doubt
     return doubt
 
 
@@ -122,43 +174,66 @@ def _variants(folded: str, table: str) -> list[str]:
     return variants
 
 
-def _meaning(folded: str, words: str, unit_text: str, group: str, table: str) -> HeaderMatch:
+def _listed(folded: str, words: str, unit_text: str, group: str, table: str) -> HeaderMatch:
     entries = dictionary(table).find(folded)
-    if entries:
-        return _of_entries(entries, words, unit_text, group)
-    if table not in ("motor", "relay"):
-        return NOTHING
+    return _of_entries(entries, words, unit_text, group) if entries else NOTHING
+
+
+def _composed(folded: str, words: str, unit_text: str, group: str, table: str) -> HeaderMatch:
     read = read_setting_words(folded)
+    if read is not None and read.quantity:
+        quantity = vocabulary().quantities[read.quantity]
+        if unit_text and read_unit(unit_text, quantity) is None:
+            return NOTHING
+        return _sure(quantity, words, unit_text, group)
     if read is not None:
         return _of_setting(read.element, read.part, folded, words, unit_text, group)
     names, part = doubtful_elements(folded)
-    if names:
-        candidates = tuple(
-            name for element in names if (name := setting_named(element, part or "trip_pickup")) is not None
-        )
-        return HeaderMatch(candidates=candidates, unit_text=unit_text, group=group)
-    return NOTHING
+    candidates = tuple(name for element in names if (name := setting_named(element, part or "trip_pickup")) is not None)
+    return HeaderMatch(candidates=candidates, unit_text=unit_text, group=group) if candidates else NOTHING
 
 
 def _of_entries(entries: tuple[Entry, ...], words: str, unit_text: str, group: str) -> HeaderMatch:
-    known = vocabulary().quantities
-    first = entries[0]
-    if first.combined:
-        target = known[combined_readings()[first.name].quantities[0]]
-        unit = _unit(unit_text, words, target)
-        if unit_text and unit is None:
-            return NOTHING
-        return HeaderMatch(combined=first.name, unit=unit, unit_text=unit_text, group=group)
-    fitting = [e for e in entries if not unit_text or read_unit(unit_text, known[e.name]) is not None]
+    if not unit_text:
+        if entries[0].sure:
+            return _one(entries[0], words, "", group)
+        implied = [e for e in entries if e.by_unit and unit_in_words(words, _target(e)) is not None]
+        if len(implied) == 1:
+            return _one(implied[0], words, "", group)
+        return _doubt(entries, "", group)
+    fitting = [entry for entry in entries if read_unit(unit_text, _target(entry)) is not None]
     if not fitting:
         return NOTHING
-    if fitting[0].sure:
-        return _sure(known[fitting[0].name], words, unit_text, group)
-    if len(fitting) == 1 and len(entries) > 1:
-        return _sure(known[fitting[0].name], words, unit_text, group)
-    units = {read_unit(unit_text, known[e.name]) for e in fitting} if unit_text else {None}
+    written_in = {dimension for dimension, _ in read_units(unit_text)}
+    # 'LRA (x FLA)' is the ratio, though a current may be given as a multiple as well
+    own = [entry for entry in fitting if dimension_of(_target(entry)) in written_in] or fitting
+    sure = [entry for entry in own if entry.sure] or [entry for entry in own if entry.by_unit]
+    if len(sure) == 1 and (sure[0].sure or len(own) == 1 or all(e.by_unit for e in own)):
+        return _one(sure[0], words, unit_text, group)
+    if len(own) == 1 and len(entries) > 1 and own[0].by_unit:
+        return _one(own[0], words, unit_text, group)
+    return _doubt(tuple(fitting), unit_text, group)
+
+
+def _target(entry: Entry) -> Quantity:
+    """Give the quantity by which the unit of a meaning is judged."""
+    known = vocabulary().quantities
+    return known[combined_readings()[entry.name].quantities[0] if entry.combined else entry.name]
+
+
+def _one(entry: Entry, words: str, unit_text: str, group: str) -> HeaderMatch:
+    if entry.combined:
+        unit = _unit(unit_text, words, _target(entry))
+        return HeaderMatch(combined=entry.name, unit=unit, unit_text=unit_text, group=group)
+    return _sure(_target(entry), words, unit_text, group)
+
+
+def _doubt(entries: tuple[Entry, ...], unit_text: str, group: str) -> HeaderMatch:
+    units = {read_unit(unit_text, _target(e)) for e in entries} if unit_text else {None}
+    names = [name for e in entries for name in (combined_readings()[e.name].quantities if e.combined else (e.name,))]
     return HeaderMatch(
-        candidates=tuple(e.name for e in fitting),
+        candidates=tuple(dict.fromkeys(names)),
+        by_unit=tuple(e.name for e in entries if e.by_unit and not e.combined),
         unit=units.pop() if len(units) == 1 else None,
         unit_text=unit_text,
         group=group,
@@ -179,28 +254,23 @@ def _unit(unit_text: str, words: str, quantity: Quantity) -> UnitReading | None:
     return read_unit(unit_text, quantity) if unit_text else unit_in_words(words, quantity)
 
 
-def _of_setting(
-    element: str, part: str, folded: str, words: str, unit_text: str, group: str
-) -> HeaderMatch:
+def _of_setting(element: str, part: str, folded: str, words: str, unit_text: str, group: str) -> HeaderMatch:
     known = vocabulary().quantities
     stage = {"": "trip", "trip_on": "trip", "alarm_on": "alarm"}.get(part, "")
-    open_part = stage if not part or folded.split()[-1] in ("trip", "alarm", "alm") else ""
+    open_part = stage if not part or folded.split()[-1] in ("trip", "alarm") else ""
     if open_part and unit_text:
         for candidate in (f"{stage}_pickup", f"{stage}_delay"):
             name = setting_named(element, candidate)
             if name is not None and read_unit(unit_text, known[name]) is not None:
                 return _sure(known[name], words, unit_text, group)
         return NOTHING
-    name = setting_named(element, part or "trip_on")
-    if name is None:
-        if open_part:
-            return HeaderMatch(open_part=open_part, element=element, group=group)
+    if open_part:
+        return HeaderMatch(open_part=open_part, element=element, group=group)
+    name = setting_named(element, part)
+    if name is None or (unit_text and read_unit(unit_text, known[name]) is None):
         return NOTHING
-    quantity = known[name]
-    if unit_text and read_unit(unit_text, quantity) is None:
-        return NOTHING
-    unit = read_unit(unit_text, quantity) if unit_text else None
-    return HeaderMatch(name, unit=unit, unit_text=unit_text, group=group, open_part=open_part, element=element)
+    unit = read_unit(unit_text, known[name]) if unit_text else None
+    return HeaderMatch(name, unit=unit, unit_text=unit_text, group=group, element=element)
 
 
 @lru_cache(maxsize=65536)

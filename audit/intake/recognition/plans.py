@@ -108,7 +108,7 @@ class Planner:
         """Let the cells tell whether a column headed by an element alone holds yes and no, a level or a time."""
         header = self.heading.label(column)
         unit_text = self.heading.units.get(column, "")
-        name = part_by_cells(found.element, found.open_part, self.sample(column), unit_text)
+        name = part_by_cells(found.element, found.open_part, self.sample(column), unit_text, is_level(header))
         if name is None:
             choices = tuple(
                 name
@@ -137,6 +137,13 @@ class Planner:
         if len(found.candidates) > 1:
             fitting = [name for name in candidates if _units_fit(known[name], unit_text, sample)]
             settled = fitting[0] if len(fitting) == 1 and _unit_is_known(unit_text, sample, known[fitting[0]]) else ""
+        if not settled and (unit_text or len(found.by_unit) == 1):
+            settled = _only(
+                [n for n in found.by_unit if n in candidates and _units_fit(known[n], unit_text, sample)],
+                unit_text,
+                sample,
+                known,
+            )
         settled = settled or self._by_magnitude(column, candidates, unit_text, plans)
         if not settled and "motor" in candidates and looks_like_tags(sample):
             settled = "motor"
@@ -148,9 +155,7 @@ class Planner:
         self._ask(column, tuple(candidates))
         return Plan(column, header, how=ASKED)
 
-    def _by_magnitude(
-        self, column: int, candidates: Sequence[str], unit_text: str, plans: Mapping[int, Plan]
-    ) -> str:
+    def _by_magnitude(self, column: int, candidates: Sequence[str], unit_text: str, plans: Mapping[int, Plan]) -> str:
         """Settle a current against rated power and voltage of the same rows, where exactly one meaning fits."""
         wanted = [name for name in ("full_load_a", "locked_rotor_a") if name in candidates]
         rating = self._rating_a(plans)
@@ -167,9 +172,7 @@ class Planner:
         if ratio.size < 3:
             return ""
         bands = {"full_load_a": FULL_LOAD_TO_RATING, "locked_rotor_a": LOCKED_ROTOR_TO_RATING}
-        fits = [
-            name for name in wanted if np.mean((ratio >= bands[name][0]) & (ratio <= bands[name][1])) >= 0.9
-        ]
+        fits = [name for name in wanted if np.mean((ratio >= bands[name][0]) & (ratio <= bands[name][1])) >= 0.9]
         rivals = [name for name in candidates if name not in wanted]
         if rivals and not _rivals_are_unlike(rivals):
             return ""
@@ -285,6 +288,10 @@ def _factor(unit: UnitReading | None, quantity: Quantity) -> float:
     return found[0] if found is not None and not unit.base else float("nan")
 
 
+def _only(fitting: Sequence[str], unit_text: str, sample: Sequence[CellValue], known: Mapping[str, Quantity]) -> str:
+    return fitting[0] if len(fitting) == 1 and _unit_is_known(unit_text, sample, known[fitting[0]]) else ""
+
+
 def _units_fit(quantity: Quantity, unit_text: str, sample: Sequence[CellValue]) -> bool:
     """Tell whether header unit and cell units, where there are any, fit a quantity."""
     if quantity.kind != "number":
@@ -323,7 +330,14 @@ def looks_like_tags(sample: Sequence[CellValue]) -> bool:
     return sum(any(c.isdigit() for c in text) and any(c.isalpha() for c in text) for text in texts) > 0.7 * len(texts)
 
 
-def part_by_cells(element: str, stage: str, sample: Sequence[CellValue], unit_text: str = "") -> str | None:
+def is_level(header: str) -> bool:
+    """Tell whether a header is written as a level: 'I>>', 'U<'."""
+    return header.rstrip().endswith((">", "<")) and not header.strip().casefold().startswith("t")
+
+
+def part_by_cells(
+    element: str, stage: str, sample: Sequence[CellValue], unit_text: str = "", level_sign: bool = False
+) -> str | None:
     """Tell by its cells which part of an element a column holds; '' where it holds nothing, None where it is open.
 
     >>> part_by_cells("jam", "trip", ["Yes", "No", "OFF"])
@@ -351,6 +365,6 @@ def part_by_cells(element: str, stage: str, sample: Sequence[CellValue], unit_te
     if units:
         fitting = [name for name in choices if all(read_unit(unit, known[name]) is not None for unit in units)]
         return fitting[0] if len(fitting) == 1 else None
-    if level and not delay and not known[level].bases:
+    if level and (level_sign or (not delay and not known[level].bases)):
         return level
     return None

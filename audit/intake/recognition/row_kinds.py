@@ -18,7 +18,9 @@ _NOTE = re.compile(
     r"|[*†‡].*|\(?\d{1,2}[.)]\s+\D.*",
     re.IGNORECASE | re.DOTALL,
 )
-_AREA = re.compile(r"(?:area|unit|section|plant|building|train|mcc|swgr|switchgear|system|dept|department|bus)\b.*", re.IGNORECASE)
+_AREA = re.compile(
+    r"(?:area|unit|section|plant|building|train|mcc|swgr|switchgear|system|dept|department|bus)\b.*", re.IGNORECASE
+)
 _LONGEST_TAG = 24
 
 
@@ -47,7 +49,12 @@ def _filled(value: object) -> bool:
 
 
 def kinds_of_rows(
-    grid: SheetGrid, heading: Heading, key: int, last_row: int, fill_down: bool = False, used: frozenset[int] = frozenset()
+    grid: SheetGrid,
+    heading: Heading,
+    key: int,
+    last_row: int,
+    fill_down: bool = False,
+    used: frozenset[int] = frozenset(),
 ) -> RowKinds:
     """Sort the rows below a heading; `key` is the column that names records, `used` the columns that are read.
 

@@ -11,17 +11,50 @@ from audit.vocabulary.quantities import vocabulary
 
 LONGEST_WORD = 5
 _SAYS_LITTLE = frozenset(
-    ["protection", "element", "function", "phase", "phases", "motor", "value", "current", "relay", "stage", "device", "fault", "unit", "prot", "amps", "volts", "for", "the", "of", "to", "from", "ansi", "iec", "ieee", "c37.2", "no", "range", "select"]
+    [
+        "protection",
+        "element",
+        "function",
+        "phase",
+        "phases",
+        "motor",
+        "value",
+        "current",
+        "relay",
+        "stage",
+        "device",
+        "fault",
+        "unit",
+        "prot",
+        "amps",
+        "volts",
+        "for",
+        "the",
+        "of",
+        "to",
+        "from",
+        "ansi",
+        "iec",
+        "ieee",
+        "c37.2",
+        "no",
+        "range",
+        "select",
+    ]
 )
 _SAYS_NOTHING = frozenset({"at", "a", "the", "of", "for", "value"})
 
 
 @dataclass(frozen=True, slots=True)
 class SettingWords:
-    """What the words of a setting's header mean: the element and the part ('' where only the element is named)."""
+    """What the words of a setting's header mean: the element and the part ('' where only the element is named).
+
+    `quantity` is filled where the words beside the element name a setting that only this element has.
+    """
 
     element: str
     part: str
+    quantity: str = ""
 
 
 @dataclass(frozen=True)
@@ -32,6 +65,7 @@ class Grammar:
     open_elements: Mapping[tuple[str, ...], tuple[str, ...]]
     parts: Mapping[tuple[str, ...], str]
     quantities: Mapping[tuple[str, str], str]
+    own: Mapping[tuple[str, tuple[str, ...]], str]
 
 
 def _words(text: str) -> tuple[str, ...]:
@@ -62,12 +96,22 @@ def grammar() -> Grammar:
     quantities = {
         (q.element, q.part): q.name for q in known.quantities.values() if q.element and q.part and q.part != "own"
     }
-    return Grammar(elements, {words: tuple(names) for words, names in doubtful.items()}, parts, quantities)
+    own: dict[tuple[str, tuple[str, ...]], str] = {}
+    for quantity in known.quantities.values():
+        if quantity.element is None:
+            continue
+        for header in quantity.headers:
+            tokens = list(_words(header))
+            found = _element_at(tokens, elements)
+            if found is not None and found[0] == quantity.element and found[2] < len(tokens):
+                rest = tokens[: found[1]] + tokens[found[1] + found[2] :]
+                own.setdefault((quantity.element, _unordered(rest)), quantity.name)
+    open_elements = {words: tuple(names) for words, names in doubtful.items()}
+    return Grammar(elements, open_elements, parts, quantities, own)
 
 
-def _element_at(tokens: list[str]) -> tuple[str, int, int] | None:
+def _element_at(tokens: list[str], known: Mapping[tuple[str, ...], str]) -> tuple[str, int, int] | None:
     """Find the longest word of an element: its name, where it starts and how many tokens it takes."""
-    known = grammar().elements
     for length in range(min(LONGEST_WORD, len(tokens)), 0, -1):
         for start in range(len(tokens) - length + 1):
             name = known.get(tuple(tokens[start : start + length]))
@@ -79,13 +123,15 @@ def _element_at(tokens: list[str]) -> tuple[str, int, int] | None:
 def read_setting_words(folded: str) -> SettingWords | None:
     """Read a folded header as element and part, or give None where it is no such header.
 
-    >>> read_setting_words("short circuit trip pickup")
-    SettingWords(element='short_circuit', part='trip_pickup')
-    >>> read_setting_words("i>> delay"), read_setting_words("rated power") is None
-    (SettingWords(element='short_circuit', part='trip_delay'), True)
+    >>> found = read_setting_words("short circuit trip pickup")
+    >>> found.element, found.part
+    ('short_circuit', 'trip_pickup')
+    >>> read_setting_words("i>> delay").part, read_setting_words("rated power") is None
+    ('trip_delay', True)
     """
     tokens = folded.split()
-    found = _element_at(tokens)
+    known = grammar()
+    found = _element_at(tokens, known.elements)
     if found is None:
         return None
     element = found[0]
@@ -96,12 +142,18 @@ def read_setting_words(folded: str) -> SettingWords | None:
             part = _part(rest)
             return SettingWords(element, part) if part else None
         rest = rest[:start] + rest[start + length :]
-        found = _element_at(rest)
+        own = known.own.get((element, _unordered(rest)))
+        if own is not None:
+            return SettingWords(element, "own", own)
+        found = _element_at(rest, known.elements)
     if not rest:
         return SettingWords(element, "")
     part = _part(rest)
     if part is None:
         rest = [word for word in rest if word not in _SAYS_LITTLE]
+        own = known.own.get((element, _unordered(rest)))
+        if own is not None:
+            return SettingWords(element, "own", own)
         part = _part(rest) if rest else ""
     return None if part is None else SettingWords(element, part)
 

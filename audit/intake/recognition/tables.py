@@ -99,11 +99,16 @@ def _motor(matches: Mapping[str, Mapping[int, HeaderMatch]], settings_make_list:
 def _start(matches: Mapping[int, HeaderMatch]) -> Verdict | None:
     names = names_in(matches)
     starts = names - {"start_motor", "start_clock"}
-    if "start_motor" not in names or len(starts) < 2 or not starts & {
-        "start_moment",
-        "start_current_a",
-        "start_time_s",
-    }:
+    if (
+        "start_motor" not in names
+        or len(starts) < 2
+        or not starts
+        & {
+            "start_moment",
+            "start_current_a",
+            "start_time_s",
+        }
+    ):
         return None
     # a motor list knows starting currents and times too; a record of a start has a date
     return Verdict("start", len(starts) + (3 if "start_moment" in starts else 0), matches)
