@@ -1,0 +1,1 @@
+"""Invented sites, made from physics: plants, their protection settings and the workbooks that hold them."""

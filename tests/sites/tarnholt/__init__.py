@@ -1,0 +1,1 @@
+"""Tarnholt Quarry and Lime Works: an invented site."""

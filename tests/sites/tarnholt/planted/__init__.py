@@ -1,0 +1,1 @@
+"""Defects planted into the sound works, each with the findings that it must give."""

@@ -1,0 +1,1 @@
+"""Workbooks of an invented site, written as people keep them."""
