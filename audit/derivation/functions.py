@@ -28,6 +28,7 @@ from audit.engineering import (
     insulation_class,
     interrupting_duty,
     inverse_time,
+    motor_capacitor,
     motor_contribution,
     negative_sequence,
     nema_tables,
@@ -72,6 +73,7 @@ _MODULES: tuple[tuple[ModuleType, tuple[str, ...]], ...] = (
     (insulation_class, ("class_temperature_c", "rise_by_resistance_k")),
     (interrupting_duty, ("interrupting_duty_by_peak_ka",)),
     (inverse_time, ("inverse_time_s", "definite_time_s")),
+    (motor_capacitor, ("compensated_current_a",)),
     (motor_contribution, ("motor_fault_contribution_ka",)),
     (
         negative_sequence,
