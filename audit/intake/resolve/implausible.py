@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Mapping, Sequence
 
 import numpy as np
@@ -16,6 +17,8 @@ from audit.vocabulary.quantities import Quantity
 from audit.vocabulary.spellings import conversion, dimension_of, spellings
 
 MOST_CAUSES = 3
+MOST_CELLS = 20
+"""So many cells of a quantity are complained of one by one, further ones once a column."""
 MULTIPLE = "a multiple of its base"
 UNIT_WORDS = {"pct": "%", "c": "°C", "f": "°F", "mm2": "mm²", "cycles": "cycles"}
 
@@ -39,23 +42,32 @@ def withhold_implausible(
     frame = frame.assign(**columns)
     known = {quantity.name: quantity for quantity in told}
     slips: dict[tuple[str, str], list[int]] = {}
+    shown: Counter[str] = Counter()
+    more: dict[tuple[str, str], list[int]] = {}
     for failure in failures(frame, known):
         quantity, column = known[failure.column], picked[failure.column]
         number = int(column.reading[failure.row])
-        written = str(readings.at[number, "written"])
         causes = likely_causes(quantity, readings.at[number, "number"], str(readings.at[number, "unit"]))
-        ledger.complain(
-            int(column.cell[failure.row]),
-            f"'{written}' is no plausible {quantity.label}" if range_of(quantity) else f"'{written}' is not understood",
-            expected_of(quantity),
-            _advice(causes),
-            quantity=quantity.name,
-            subject=quantity.subject,
-            key=keys[failure.row],
-        )
+        advice = _advice(causes)
+        shown[quantity.name] += 1
+        if shown[quantity.name] <= MOST_CELLS:
+            ledger.complain(
+                int(column.cell[failure.row]),
+                _found(quantity).format(written=readings.at[number, "written"]),
+                expected_of(quantity),
+                advice,
+                quantity=quantity.name,
+                subject=quantity.subject,
+                key=keys[failure.row],
+            )
+        else:
+            more.setdefault((quantity.name, advice), []).append(number)
         if causes:
             slips.setdefault((quantity.name, causes[0]), []).append(number)
         column.withhold(np.array([failure.row]), np.nan if range_of(quantity) else UNREAD)
+    for (name, advice), numbers in more.items():
+        quantity = known[name]
+        ledger.complain_by_column(readings.loc[numbers], _found(quantity), expected_of(quantity), advice, quantity=name)
     for (name, cause), numbers in slips.items():
         ledger.ask_by_column(
             readings.loc[numbers],
@@ -63,6 +75,10 @@ def withhold_implausible(
             "Is this column, or are these cells, in another unit? The values are withheld until then.",
             (f'unit = "{cause}"',) if cause != MULTIPLE else (),
         )
+
+
+def _found(quantity: Quantity) -> str:
+    return f"'{{written}}' is no plausible {quantity.label}" if range_of(quantity) else "'{written}' is not understood"
 
 
 def expected_of(quantity: Quantity) -> str:

@@ -9,27 +9,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from audit.fleet.column import NO_ROW, Integers
+from audit.fleet.folding import exact as exact
+from audit.fleet.folding import loose as loose
 
 AMBIGUOUS = -2
-_SIGNS = str.maketrans("", "", " -._\u2010\u2011\u2012\u2013\u2014\u2212\u00a0")
-
-
-def exact(name: str) -> str:
-    """Fold what never tells two tags apart: case and surrounding or doubled spaces.
-
-    >>> exact("  p-101  A ")
-    'p-101 a'
-    """
-    return " ".join(name.casefold().split())
-
-
-def loose(name: str) -> str:
-    """Fold dashes, spaces, dots and underscores too.
-
-    >>> loose("CV 101 A") == loose("cv-101a")
-    True
-    """
-    return exact(name).translate(_SIGNS)
 
 
 @dataclass

@@ -167,3 +167,12 @@ def test_a_known_word_within_a_free_text_is_taken_and_shown(site):
     assert machine.choices[machine.values[0]] == "fan"
     assert fleet.complaints[0].weight == "remark"
     assert column(motors(site, driven_machine="pump house fan"), "motor", "driven_machine")[0] == -1
+
+
+def test_a_whole_column_of_slips_does_not_drown_the_reader(site):
+    rows = [{"motor": f"P-{n}", "full_load_a": "100 kA"} for n in range(200)]
+    fleet = site().add("motor", rows).fleet()
+    assert np.isnan(column(fleet, "motor", "full_load_a")).all()
+    assert len(fleet.complaints) == 21
+    assert "(and 179 more of this column)" in fleet.complaints[-1].found  # 200 less 20 shown less the one named
+    assert len(fleet.questions) == 1
