@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import tempfile
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 
@@ -14,13 +14,16 @@ from audit.findings.audit import Audit
 from audit.findings.finding import Finding
 from audit.findings.render import FindingRenderer
 from audit.report.workbook.marks import marks_by_file
-from audit.report.workbook.patch import CannotPatch, annotate_copy
+from audit.report.workbook.patch import CannotPatch, annotate_copy, names_for_report
 from audit.report.workbook.sheets.cover import write_cover
 from audit.report.workbook.sheets.findings import write_findings
 from audit.report.workbook.sheets.lists import write_checks, write_data_to_collect, write_inputs
 from audit.report.workbook.sheets.motors import write_motors
 from audit.report.workbook.sheets.ranges import write_ranges
 
+COVER, FINDINGS, MOTORS, RANGES = "Audit", "Findings", "Motors", "Ranges"
+DATA, INPUTS, CHECKS = "Data to collect", "Inputs", "Checks applied"
+SHEETS = (COVER, FINDINGS, MOTORS, RANGES, DATA, INPUTS, CHECKS)
 PATCHABLE = (".xlsx", ".xlsm")
 
 
@@ -44,11 +47,12 @@ def write_workbooks(audit: Audit, folder: Path) -> list[WrittenWorkbook]:
             if item.file != motor_file and item.file not in marks:
                 continue
             report = Path(scratch) / "sheets.xlsx"
-            build_sheets(audit, findings, item.file, whole=item.file == motor_file).save(report)
             target = folder / f"{source.stem}-annotated{source.suffix}"
             try:
                 if source.suffix.casefold() not in PATCHABLE:
                     raise CannotPatch(f"{source.suffix} files cannot be marked without loss")
+                names = names_for_report(source, SHEETS)
+                build_sheets(audit, findings, item.file, names, whole=item.file == motor_file).save(report)
                 annotate_copy(source, target, marks.get(item.file, []), report)
                 written.append(WrittenWorkbook(target))
             except CannotPatch as reason:
@@ -63,7 +67,7 @@ def _apart(
     if file != motor_file:
         return [WrittenWorkbook(folder / file, f"no marked copy of {file}: {reason}; see the findings sheet")]
     target = folder / "findings.xlsx"
-    build_sheets(audit, findings, "", whole=True).save(target)
+    build_sheets(audit, findings, "", {}, whole=True).save(target)
     return [WrittenWorkbook(target, f"no marked copy of {file}: {reason}; our sheets stand in a workbook of their own")]
 
 
@@ -76,18 +80,27 @@ def _motor_file(audit: Audit) -> str:
     return ""
 
 
-def build_sheets(audit: Audit, findings: Sequence[Finding], own_file: str, *, whole: bool) -> Workbook:
-    """Build our sheets for one workbook: all of them for the motor list, cover and findings for the others."""
+def build_sheets(
+    audit: Audit, findings: Sequence[Finding], own_file: str, names: Mapping[str, str], *, whole: bool
+) -> Workbook:
+    """Build our sheets for one workbook: all of them for the motor list, cover and findings for the others.
+
+    `names` gives the sheet names that are free in the workbook that they go into.
+    """
     book = Workbook()
-    cover = book.active
-    assert isinstance(cover, Worksheet)
-    cover.title = "Audit"
-    write_cover(audit, cover)
-    write_findings(findings, book.create_sheet("Findings"), audit.fleet.site, own_file)
+    book.remove(book.worksheets[0])
+
+    def sheet(name: str) -> Worksheet:
+        created = book.create_sheet(names.get(name, name))
+        assert isinstance(created, Worksheet)
+        return created
+
+    write_cover(audit, sheet(COVER))
+    write_findings(findings, sheet(FINDINGS), audit.fleet.site, own_file)
     if whole:
-        write_motors(audit, list(findings), book.create_sheet("Motors"))
-        write_ranges(audit, book.create_sheet("Ranges"))
-        write_data_to_collect(audit, book.create_sheet("Data to collect"))
-        write_inputs(audit, book.create_sheet("Inputs"))
-        write_checks(audit, book.create_sheet("Checks applied"))
+        write_motors(audit, list(findings), sheet(MOTORS))
+        write_ranges(audit, sheet(RANGES))
+        write_data_to_collect(audit, sheet(DATA))
+        write_inputs(audit, sheet(INPUTS))
+        write_checks(audit, sheet(CHECKS))
     return book

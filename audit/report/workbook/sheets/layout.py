@@ -4,10 +4,12 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Sequence
+from typing import Any
 
 from openpyxl.cell import Cell
 from openpyxl.styles import Alignment, Border, Font, PatternFill, Side
 from openpyxl.utils import get_column_letter
+from openpyxl.worksheet.properties import PageSetupProperties
 from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.cautions import SHORT_CAUTION
@@ -24,7 +26,7 @@ _ROW_BORDER = Border(bottom=_THIN)
 _UNPRINTABLE = re.compile(r"[\x00-\x08\x0b\x0c\x0e-\x1f]")
 
 
-def put(sheet: Worksheet, row: int, column: int, value: object, *, bold: bool = False, wrap: bool = True) -> Cell:
+def put(sheet: Worksheet, row: int, column: int, value: Any, *, bold: bool = False, wrap: bool = True) -> Cell:
     """Write a value; text never becomes a formula."""
     cell = sheet.cell(row=row, column=column)
     assert isinstance(cell, Cell)
@@ -32,7 +34,7 @@ def put(sheet: Worksheet, row: int, column: int, value: object, *, bold: bool = 
         cell.value = _UNPRINTABLE.sub(" ", value)[:32_000]
         cell.data_type = "s"
     else:
-        cell.value = value  # type: ignore[assignment]
+        cell.value = value
     cell.alignment = Alignment(vertical="top", wrap_text=wrap)
     cell.font = Font(name="Calibri", size=10, bold=bold)
     return cell
@@ -77,7 +79,7 @@ def page(sheet: Worksheet, site: str) -> None:
     sheet.page_setup.paperSize = 9
     sheet.page_setup.fitToWidth = 1
     sheet.page_setup.fitToHeight = 0
-    sheet.sheet_properties.pageSetUpPr.fitToPage = True  # type: ignore[union-attr]
+    sheet.sheet_properties.pageSetUpPr = PageSetupProperties(fitToPage=True)
     sheet.page_margins.left = sheet.page_margins.right = 0.4
     sheet.page_margins.top, sheet.page_margins.bottom = 0.5, 0.8
     foot, top = sheet.oddFooter, sheet.oddHeader
