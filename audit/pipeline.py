@@ -13,11 +13,12 @@ from audit.checks.entry import Check
 from audit.checks.ranges import permissible_ranges
 from audit.checks.verdicts import NOT_APPLICABLE, Outcome, evaluate_check
 from audit.derivation.groups import with_groups
+from audit.derivation.register_facts import with_register_facts
 from audit.derivation.workings import Workings
 from audit.findings.audit import Audit
 from audit.findings.collect import unproven_and_wanted
 from audit.findings.finding import FindingCode
-from audit.findings.gather import breaches, conflicts, in_order, with_exceptions
+from audit.findings.gather import breaches, in_order, of_ranges, with_exceptions
 from audit.fleet.fleet import Fleet
 from audit.intake import read_fleet
 
@@ -45,7 +46,7 @@ def _has_data(fleet: Fleet, catalogue: Catalogue, name: str) -> bool:
 
 def audit_fleet(fleet: Fleet, catalogue: Catalogue, *, audited_on: date, packs: Iterable[str] = ()) -> Audit:
     """Judge a fleet that was read."""
-    grouped = with_groups(fleet)
+    grouped = with_register_facts(with_groups(fleet))
     scope = packs_in_scope(catalogue, fleet, packs)
     checks = [check for check in catalogue.checks if check.pack in scope]
     workings = _workings(grouped, catalogue, audited_on)
@@ -53,8 +54,8 @@ def audit_fleet(fleet: Fleet, catalogue: Catalogue, *, audited_on: date, packs: 
     ranges = permissible_ranges(outcomes, workings)
     codes: list[FindingCode] = breaches(outcomes)
     for number, check in enumerate(checks):
-        if check.stage == "ranges" and check.name == "range-not-empty":
-            codes += conflicts(number, ranges)
+        if check.stage == "ranges":
+            codes += of_ranges(number, check, ranges, workings)
     unproven, wanted = unproven_and_wanted(outcomes, workings)
     return Audit(
         fleet=grouped,

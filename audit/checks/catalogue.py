@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from pathlib import Path
 from typing import Any
@@ -10,13 +10,15 @@ from typing import Any
 from audit.checks.entry import Check, Requirement, read_entry
 from audit.derivation.functions import FUNCTIONS
 from audit.derivation.recipes import Recipe, check_recipes, lookup_for, read_recipes
+from audit.derivation.register_facts import REGISTER_FACTS
 from audit.expression.functions import Functions
-from audit.expression.nodes import Node, names_in
+from audit.expression.nodes import Name, Node, names_in
 from audit.expression.parse import BadExpression
 from audit.expression.units import Meaning, UnitCheck, nearest
 from audit.limits.limits import BadRule, Limit, override_limits, read_limits, read_rule_file
 from audit.rule_folder import rules_folder
 from audit.vocabulary.quantities import Quantity, vocabulary
+from audit.vocabulary.units import DIMENSIONLESS, UNITS
 
 CORE = "core"
 
@@ -91,12 +93,12 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
             if name in recipes:
                 raise BadRule(more[name].file, name, "the quantity is already derived by the tool's own rules")
         recipes, derived = {**recipes, **more}, {**derived, **more_derived}
-    quantities = {**vocabulary().quantities, **derived}
+    quantities = {**vocabulary().quantities, **REGISTER_FACTS, **derived}
     _refuse_clashes(limits, recipes, checks)
     meanings = lookup_for(quantities, limits)
     check_recipes(recipes, meanings, FUNCTIONS)
     for check in checks:
-        _check_names_and_units(check, meanings, quantities, checks)
+        _check_names_and_units(check, meanings, quantities, limits, checks)
     for pack, names in evidence.items():
         for name in names:
             if name not in quantities:
@@ -145,13 +147,13 @@ def _site(
 
 
 def _refuse_clashes(limits: Mapping[str, Limit], recipes: Mapping[str, Recipe], checks: list[Check]) -> None:
-    known = vocabulary().quantities
+    known = {**vocabulary().quantities, **REGISTER_FACTS}
     for name in limits:
         if name in known or name in recipes:
             raise BadRule("limits.toml", name, "a limit has the name of a quantity")
     for name, recipe in recipes.items():
         if name in known:
-            raise BadRule(recipe.file, name, "a derived quantity has the name of a quantity of the vocabulary")
+            raise BadRule(recipe.file, name, "a derived quantity has the name of a quantity that the reader gives")
     seen: dict[str, str] = {}
     for check in checks:
         if check.key in seen:
@@ -160,7 +162,11 @@ def _refuse_clashes(limits: Mapping[str, Limit], recipes: Mapping[str, Recipe], 
 
 
 def _check_names_and_units(
-    check: Check, meanings: Mapping[str, Meaning], quantities: Mapping[str, Quantity], checks: list[Check]
+    check: Check,
+    meanings: Mapping[str, Meaning],
+    quantities: Mapping[str, Quantity],
+    limits: Mapping[str, Limit],
+    checks: list[Check],
 ) -> None:
     checker = UnitCheck(meanings.get, meanings, FUNCTIONS)
 
@@ -181,11 +187,25 @@ def _check_names_and_units(
     for name in check.evidence:
         if name not in quantities:
             raise BadRule(check.file, check.name, f"evidence '{name}' is not a known name{nearest(name, quantities)}")
+    _check_slips(check, meaning, limits)
     if check.unless_found is not None and not any(other.name == check.unless_found for other in checks):
         known = [other.name for other in checks]
         raise BadRule(
             check.file, check.name, f"'{check.unless_found}' is not a check{nearest(check.unless_found, known)}"
         )
+
+
+def _check_slips(check: Check, meaning: Callable[[Node, str], Meaning], limits: Mapping[str, Limit]) -> None:
+    for unit, names in check.slips.items():
+        if unit not in UNITS:
+            raise BadRule(check.file, check.name, f"'{unit}' of 'slips' is not a known unit{nearest(unit, UNITS)}")
+        for name in names:
+            factor = meaning(Name(name), "number").unit
+            if factor is not None and not factor.same_as(DIMENSIONLESS):
+                raise BadRule(check.file, check.name, f"'{name}' of 'slips' is no plain factor")
+    for name in (*check.signs, *((check.beyond,) if check.beyond else ())):
+        if name not in limits:
+            raise BadRule(check.file, check.name, f"'{name}' is not a known limit{nearest(name, limits)}")
 
 
 def _check_requirement(check: Check, requirement: Requirement, meaning: Any) -> None:

@@ -23,6 +23,7 @@ SUBJECTS = ("motor", "relay", "bus", "sisters", "peers")
 _WORDS = ("says", "severity_because", "why", "blind_spots", "remedy", "source", "function")
 _BOUND_KEYS = {"when", "judges", "within", "source", *BOUND_KINDS}
 _KEYS = {*_WORDS, *_BOUND_KEYS, "subject", "severity", "evidence", "for_each", "unless_found", "stage", "bound", "case"}
+_KEYS |= {"slips", "signs", "beyond"}
 
 
 @dataclass(frozen=True, slots=True)
@@ -73,6 +74,12 @@ class Check:
     unless_found: str | None = None
     stage: Literal["rows", "ranges"] = "rows"
     each: str | None = None
+    slips: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
+    """By the unit of what is judged ("1" for none): limits and quantities that a slip multiplies or divides by."""
+    signs: tuple[str, ...] = ()
+    """Limits near which a value that is judged points at a cause, which the limit says."""
+    beyond: str | None = None
+    """For a check of ranges: the limit that says how far outside its range a setting must lie."""
     cases: tuple[Case, ...] = field(default=())
 
     @property
@@ -139,14 +146,36 @@ def _cases(path: Path, name: str, entries: object) -> tuple[Case, ...]:
     return tuple(cases)
 
 
-def _filled(value: Any, each: str) -> Any:
+def _filled(value: Any, words: Mapping[str, str]) -> Any:
     if isinstance(value, str):
-        return value.replace("{setting}", each)
+        for placeholder, word in words.items():
+            value = value.replace(f"{{{placeholder}}}", word)
+        return value
     if isinstance(value, list):
-        return [_filled(item, each) for item in value]
+        return [_filled(item, words) for item in value]
     if isinstance(value, dict):
-        return {_filled(key, each): _filled(item, each) for key, item in value.items()}
+        return {_filled(key, words): _filled(item, words) for key, item in value.items()}
     return value
+
+
+def _eaches(path: Path, name: str, entry: Mapping[str, Any]) -> list[Mapping[str, str]]:
+    """Give the words to fill in for each setting: its name, and what else the list says beside it."""
+    eaches: list[Mapping[str, str]] = []
+    for each in _listed(entry["for_each"]):
+        words = {"setting": each} if isinstance(each, str) else each
+        if not isinstance(words, dict) or not all(isinstance(word, str) for word in (words or {}).values()):
+            raise _refuse(path, name, "'for_each' lists settings, or tables of words with the key 'setting'")
+        if "setting" not in words:
+            raise _refuse(path, name, "a table of 'for_each' has no 'setting'", 'Write { setting = "…", … }.')
+        eaches.append(words)
+    return eaches
+
+
+def _slips(path: Path, name: str, entry: Mapping[str, Any]) -> dict[str, tuple[str, ...]]:
+    slips = entry.get("slips", {})
+    if not isinstance(slips, dict):
+        raise _refuse(path, name, "'slips' lists factors by unit", 'Write slips = { a = ["…"], s = ["…"] }.')
+    return {unit: tuple(_listed(names)) for unit, names in slips.items()}
 
 
 def read_entry(path: Path, name: str, entry: object, pack: str) -> list[Check]:
@@ -165,12 +194,12 @@ def read_entry(path: Path, name: str, entry: object, pack: str) -> list[Check]:
         )
     if entry["subject"] not in SUBJECTS:
         raise _refuse(path, name, f"'{entry['subject']}' is not a subject{nearest(str(entry['subject']), SUBJECTS)}")
-    eaches = entry.get("for_each")
-    if eaches is None:
+    if entry.get("for_each") is None:
         return [_one(path, name, entry, pack, None)]
+    eaches = _eaches(path, name, entry)
     # cases are written for the first setting of the list and stand for all
-    first = [_one(path, name, _filled(entry, eaches[0]), pack, eaches[0])]
-    rest = [_one(path, name, {**_filled(entry, each), "case": []}, pack, each) for each in eaches[1:]]
+    first = [_one(path, name, _filled(entry, eaches[0]), pack, eaches[0]["setting"])]
+    rest = [_one(path, name, {**_filled(entry, words), "case": []}, pack, words["setting"]) for words in eaches[1:]]
     return first + rest
 
 
@@ -208,5 +237,8 @@ def _one(path: Path, name: str, entry: Mapping[str, Any], pack: str, each: str |
         unless_found=entry.get("unless_found"),
         stage=stage,
         each=each,
+        slips=_slips(path, name, entry),
+        signs=tuple(_listed(entry.get("signs", []))),
+        beyond=entry.get("beyond"),
         cases=_cases(path, name, entry.get("case")),
     )

@@ -6,8 +6,9 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from datetime import UTC, datetime
 
+from audit.derivation.recipes import AUDIT_DATE
 from audit.derivation.workings import CHILD_OF, Workings
-from audit.expression.nodes import Call, Name, Node, walk
+from audit.expression.nodes import Name, Node, names_over_rows, walk
 from audit.expression.text import plain_number, render
 from audit.fleet.column import ASSUMED, BASIS_NAMES, NO_CELL, Column
 from audit.limits.limits import Limit
@@ -43,7 +44,7 @@ def shown_value(column: Column, row: int, quantity: Quantity) -> str:
     if column.kind == "text":
         return str(value)
     if column.kind == "date":
-        return _day(float(value))
+        return day_text(float(value))
     return shown_number(float(value), quantity)
 
 
@@ -58,7 +59,8 @@ def _one_missing(column: Column, row: int) -> bool:
     return value is None
 
 
-def _day(days: float) -> str:
+def day_text(days: float) -> str:
+    """Write a day as a date."""
     return datetime.fromtimestamp(days * 86400, UTC).strftime("%Y-%m-%d")
 
 
@@ -88,6 +90,8 @@ class Trace:
         limit = self.workings.limits.get(name)
         if limit is not None:
             return limit_text(limit)
+        if name == AUDIT_DATE:
+            return self.workings.audited_on.isoformat()
         quantity = self.workings.quantities.get(name)
         if quantity is None:
             return name.replace("_", " ")
@@ -96,11 +100,11 @@ class Trace:
     def numbers_in(self, node: Node, subject: str, row: int) -> str:
         """Write an expression with the numbers of a row put in."""
         functions = self.workings.functions
+        of_child_rows = names_over_rows(node, self.of_rows)
 
         def name_of(name: str) -> str:
-            quantity = self.workings.quantities.get(name)
-            if quantity is not None and quantity.subject == CHILD_OF.get(subject):
-                return quantity.label
+            if name in of_child_rows and name in self.workings.quantities:
+                return self.workings.quantities[name].label
             return self.text_of(subject, row, name)
 
         return render(node, name_of, lambda function: functions[function].reads or function.replace("_", " "))
@@ -108,13 +112,7 @@ class Trace:
     def steps(self, node: Node, subject: str, row: int, seen: set[tuple[str, int]] | None = None) -> Iterator[Step]:
         """Give every quantity beneath an expression in one row, deepest first, each once."""
         seen = set() if seen is None else seen
-        over_rows = {
-            operand.name
-            for call in walk(node)
-            if isinstance(call, Call) and self.workings.functions[call.function].of_rows
-            for operand in call.operands
-            if isinstance(operand, Name)
-        }
+        over_rows = names_over_rows(node, self.of_rows)
         for part in walk(node):
             if isinstance(part, Name) and part.name in self.workings.quantities and part.name not in over_rows:
                 yield from self._of_name(part.name, subject, row, seen)
@@ -139,11 +137,9 @@ class Trace:
         way = recipe.ways[place]
         child = CHILD_OF.get(quantity.subject)
         if column.deciding is not None and column.deciding[at] >= 0 and child is not None:
-            for call in walk(way.node):
-                if isinstance(call, Call) and self.workings.functions[call.function].of_rows:
-                    for operand in call.operands:
-                        if isinstance(operand, Name):
-                            yield from self._of_name(operand.name, child, int(column.deciding[at]), seen)
+            for used in names_over_rows(way.node, self.of_rows):
+                if used in self.workings.quantities:
+                    yield from self._of_name(used, child, int(column.deciding[at]), seen)
         yield from self.steps(way.node, quantity.subject, at, seen)
         yield Step(
             name,
@@ -159,6 +155,10 @@ class Trace:
             note=recipe.note if way.basis == ASSUMED else "",
         )
 
+    def of_rows(self, function: str) -> bool:
+        """Tell whether a function looks at child rows."""
+        return self.workings.functions[function].of_rows
+
     def _reads(self, function: str) -> str:
         return self.workings.functions[function].reads or function.replace("_", " ")
 
@@ -166,7 +166,7 @@ class Trace:
         """Give the label of a quantity or limit."""
         if name in self.workings.quantities:
             return self.workings.quantities[name].label
-        return name.replace("_", " ")
+        return "day of the audit" if name == AUDIT_DATE else name.replace("_", " ")
 
 
 def limit_text(limit: Limit) -> str:

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from audit.expression.nodes import Call, Compare, Join, Name, Node, parts_of
+from audit.expression.nodes import Call, Compare, Join, Name, Node, names_in, parts_of
 from audit.expression.values import UNKNOWN, Scope, evaluate
 
 Mask = NDArray[np.bool_]
@@ -49,9 +49,8 @@ def _gather(node: Node, scope: Scope, rows: Mask, gathered: dict[str, Mask]) -> 
             _gather(otherwise, scope, rows & (truth == 0), gathered)
         case Call(function, operands) if scope.functions[function].of_rows:
             missing = np.broadcast_to(evaluate(node, scope).missing(), rows.shape)
-            for operand in operands:
-                if isinstance(operand, Name):
-                    gathered[operand.name] = gathered.get(operand.name, np.zeros_like(rows)) | (rows & missing)
+            for name in dict.fromkeys(name for operand in operands for name in names_in(operand)):
+                gathered[name] = gathered.get(name, np.zeros_like(rows)) | (rows & missing)
         case _:
             for part in parts_of(node):
                 _gather(part, scope, rows, gathered)

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 from typing import Literal
 
@@ -100,6 +100,12 @@ def walk(node: Node) -> Iterator[Node]:
     yield node
     for part in parts_of(node):
         yield from walk(part)
+
+
+def names_over_rows(node: Node, of_rows: Callable[[str], bool]) -> tuple[str, ...]:
+    """Give the names that an expression looks for in child rows: those beneath functions that are `of_rows`."""
+    calls = (call for call in walk(node) if isinstance(call, Call) and of_rows(call.function))
+    return tuple(dict.fromkeys(name for call in calls for operand in call.operands for name in names_in(operand)))
 
 
 def names_in(node: Node) -> tuple[str, ...]:

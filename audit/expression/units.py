@@ -133,8 +133,6 @@ class UnitCheck:
         wanted = self._wanted(function, operands)
         same: Meaning | None = None
         for operand, place in zip(operands, wanted, strict=True):
-            if function.of_rows and not isinstance(operand, Name):
-                raise BadExpression(f"{name} takes the name of a quantity")
             found = self.meaning(operand)
             if place.sort == "same":
                 if same is not None and not _alike(same, found):

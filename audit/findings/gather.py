@@ -6,9 +6,11 @@ from collections.abc import Mapping, Sequence
 
 import numpy as np
 
-from audit.checks.entry import SEVERITIES
+from audit.checks.entry import SEVERITIES, Check
 from audit.checks.ranges import SettingRange
+from audit.checks.slips import range_hits
 from audit.checks.verdicts import BREACH, MEETS, NOT_APPLICABLE, UNPROVEN, Outcome
+from audit.derivation.workings import Workings
 from audit.expression.values import NO
 from audit.findings.finding import FindingCode
 
@@ -60,12 +62,17 @@ def breaches(outcomes: Sequence[Outcome], group: str = "") -> list[FindingCode]:
     return codes
 
 
-def conflicts(outcome: int, ranges: Mapping[str, SettingRange]) -> list[FindingCode]:
-    """Give the code of each range whose low end lies above its high end."""
+def of_ranges(
+    outcome: int, check: Check, ranges: Mapping[str, SettingRange], workings: Workings
+) -> list[FindingCode]:
+    """Give the code of each range in which a check of ranges finds something."""
     codes = []
     for place, band in enumerate(ranges.values()):
-        for row in np.flatnonzero(band.conflict()).tolist():
-            codes.append(FindingCode(outcome, row, place, float("nan"), float(band.low[row]), float(band.high[row])))
+        present = workings.column(band.subject, band.setting).values
+        for row in np.flatnonzero(range_hits(check, band, workings)).tolist():
+            codes.append(
+                FindingCode(outcome, row, place, float(present[row]), float(band.low[row]), float(band.high[row]))
+            )
     return codes
 
 

@@ -9,16 +9,20 @@ import numpy as np
 
 from audit.checks.entry import Check, Requirement
 from audit.checks.ranges import NO_CHECK, SettingRange
+from audit.checks.slips import slip_in_words
 from audit.checks.verdicts import Outcome
-from audit.derivation.trace import Step, Trace, shown_number
+from audit.derivation.recipes import lookup_for
+from audit.derivation.trace import Step, Trace, day_text, shown_number
 from audit.derivation.workings import CHILD_OF
-from audit.expression.nodes import Call, Name, Node, walk
+from audit.expression.nodes import Name, Node, names_over_rows
 from audit.expression.text import plain_number, render
+from audit.expression.units import UnitCheck
 from audit.findings.audit import Audit
+from audit.findings.causes import causes_in_words
 from audit.findings.finding import Finding, FindingCell, FindingCode
 from audit.fleet.column import NO_CELL
 from audit.vocabulary.quantities import Quantity
-from audit.vocabulary.units import DIMENSIONLESS, Unit
+from audit.vocabulary.units import DIMENSIONLESS, UNITS, Unit
 
 _BOUND_WORDS = {
     "at_least": "at least",
@@ -44,6 +48,7 @@ class FindingRenderer:
     def __init__(self, audit: Audit) -> None:
         self.audit = audit
         self.trace = Trace(audit.workings)
+        self._meanings = lookup_for(audit.workings.quantities, audit.workings.limits)
 
     def all(self) -> Iterator[Finding]:
         """Render every finding, in order."""
@@ -54,7 +59,7 @@ class FindingRenderer:
         """Render one finding."""
         outcome = self.audit.outcomes[code.outcome]
         if outcome.check.stage == "ranges":
-            return self._conflict(code, outcome.check)
+            return self._of_range(code, outcome.check)
         return self._breach(code, outcome)
 
     def _breach(self, code: FindingCode, outcome: Outcome) -> Finding:
@@ -97,7 +102,8 @@ class FindingRenderer:
             high_set_by=high_by,
             range_state=state,
             margin_pct=None if requirement.kind == "must_be" else margin_pct(code.present, low, high),
-            because=self._because(requirement, code, check, present_text, unit),
+            because=self._because(requirement, code, check, present_text, unit)
+            + causes_in_words(outcome, code, deciding, unit, self.trace),
             why=check.why,
             remedy=check.remedy,
             source=check.source,
@@ -107,16 +113,20 @@ class FindingRenderer:
             setting_group=code.group,
         )
 
-    def _conflict(self, code: FindingCode, check: Check) -> Finding:
+    def _of_range(self, code: FindingCode, check: Check) -> Finding:
         band = list(self.audit.ranges.values())[code.requirement]
         quantity = self.audit.workings.quantities[band.setting]
         unit = quantity.unit or DIMENSIONLESS
         place = self._place(code.row, "motor", code.row)
         low_by, high_by = self._set_by(band, code.row)
-        low, high = shown_number(code.low, quantity), shown_number(code.high, quantity)
-        column = self.audit.workings.column("motor", band.setting)
-        present = float(column.values[code.row])
-        because = f"{low_by} wants at least {low}, {high_by} wants at most {high}: no value satisfies both"
+        present = code.present
+        if check.slips:
+            figures = (present, code.low, code.high)
+            slip = slip_in_words(check, unit, figures, code.row, self.audit.workings)
+            because = f"{quantity.label} {shown_number(present, quantity)}, outside its range; {slip}"
+        else:
+            low, high = shown_number(code.low, quantity), shown_number(code.high, quantity)
+            because = f"{low_by} wants at least {low}, {high_by} wants at most {high}: no value satisfies both"
         return Finding(
             key=self._key(check, place.motor, band.setting, ""),
             subject="motor",
@@ -138,11 +148,11 @@ class FindingRenderer:
             unit=unit.symbol,
             low=code.low,
             high=code.high,
-            range_text="none",
+            range_text=range_text(code.low, code.high, unit) if check.slips else "none",
             low_set_by=low_by,
             high_set_by=high_by,
-            range_state="conflict",
-            margin_pct=None,
+            range_state="" if check.slips else "conflict",
+            margin_pct=margin_pct(present, code.low, code.high) if check.slips else None,
             because=because,
             why=check.why,
             remedy=check.remedy,
@@ -195,11 +205,10 @@ class FindingRenderer:
         return self._unit_of_expression(requirement.judged)
 
     def _unit_of_expression(self, node: Node | None) -> Unit:
-        if isinstance(node, Call):
-            function = self.audit.workings.functions[node.function]
-            if function.returns.unit is not None:
-                return function.returns.unit
-        return DIMENSIONLESS
+        if node is None:
+            return DIMENSIONLESS
+        checker = UnitCheck(self._meanings.get, self._meanings, self.audit.workings.functions)
+        return checker.meaning(node).unit or DIMENSIONLESS
 
     def _label(self, requirement: Requirement, quantity: Quantity | None) -> str:
         if quantity is not None:
@@ -287,7 +296,7 @@ class FindingRenderer:
             if node is None:
                 continue
             if deciding >= 0 and child is not None:
-                for name in _over_rows(node, self.audit):
+                for name in names_over_rows(node, self.trace.of_rows):
                     yield from self.trace.steps(Name(name), child, deciding, seen)
             yield from self.trace.steps(node, check.subject, row, seen)
 
@@ -300,16 +309,6 @@ class FindingRenderer:
         return tuple(cells)
 
 
-def _over_rows(node: Node, audit: Audit) -> list[str]:
-    return [
-        operand.name
-        for call in walk(node)
-        if isinstance(call, Call) and audit.workings.functions[call.function].of_rows
-        for operand in call.operands
-        if isinstance(operand, Name)
-    ]
-
-
 def _known(value: float) -> float | None:
     return None if np.isnan(value) else value
 
@@ -319,8 +318,9 @@ def _outside(present: float, low: float | None, high: float | None) -> bool:
 
 
 def _with_unit(value: float, unit: Unit) -> str:
-    text = plain_number(value)
-    return f"{text} {unit.symbol}".strip()
+    if unit == UNITS["date"]:
+        return day_text(value)
+    return f"{plain_number(value)} {unit.symbol}".strip()
 
 
 def _within(code: FindingCode, unit: Unit) -> str:

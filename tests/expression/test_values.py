@@ -13,6 +13,7 @@ from numpy.typing import NDArray
 from audit.derivation.functions import FUNCTIONS
 from audit.expression.functions import Function, Functions
 from audit.expression.lacking import lacking
+from audit.expression.nodes import Node
 from audit.expression.parse import parse
 from audit.expression.values import NO, UNKNOWN, YES, Value, evaluate
 
@@ -31,7 +32,7 @@ class FixedScope:
     def value(self, name: str) -> Value:
         return self.columns[name]
 
-    def over_rows(self, function: Function, names: tuple[str, ...]) -> Value:
+    def over_rows(self, function: Function, operands: tuple[Node, ...]) -> Value:
         raise AssertionError("no child rows here")
 
 
