@@ -213,8 +213,9 @@ class FindingRenderer:
     def _label(self, requirement: Requirement, quantity: Quantity | None) -> str:
         if quantity is not None:
             return quantity.label
-        node = requirement.judged or requirement.bound
-        assert node is not None
+        node = requirement.judged
+        if node is None:
+            return ""
         return render(node, self.trace.label_of, self._reads)
 
     def _reads(self, function: str) -> str:
@@ -275,7 +276,7 @@ class FindingRenderer:
         assert requirement.bound is not None
         numbers = self.trace.numbers_in(requirement.bound, check.subject, code.row)
         if requirement.kind == "requires":
-            return f"wanted: {label}; found: {numbers}"
+            return "; ".join(self._facts(requirement.bound, check.subject, code.row))
         bound = code.low if requirement.kind in ("at_least", "above") else code.high
         if requirement.kind == "equals":
             return f"{label} is {present_text}, wanted is {numbers}{_within(code, unit)}"
@@ -283,6 +284,11 @@ class FindingRenderer:
         workings = limit if isinstance(requirement.bound, Name) else f"{numbers} = {limit}"
         judged = self._judged_numbers(requirement, check, code, present_text)
         return f"{label} {judged}, {_BOUND_WORDS[requirement.kind]} {workings} wanted"
+
+    def _facts(self, node: Node, subject: str, row: int) -> list[str]:
+        """Give the facts that a requirement asks for, each with what was found."""
+        names = [name for name in names_in(node) if name in self.audit.workings.quantities]
+        return [f"{self.trace.label_of(name)}: {self.trace.text_of(subject, row, name)}" for name in names]
 
     def _judged_numbers(self, requirement: Requirement, check: Check, code: FindingCode, shown: str) -> str:
         if requirement.judged is None or isinstance(requirement.judged, Name):

@@ -33,7 +33,7 @@ def write_cover(audit: Audit, sheet: Worksheet) -> None:
     ]
     row = _pairs(sheet, row, "Rules", [("version", tool_version()), *(changes or [("site rules", "none")])])
     _sign_off(sheet, row)
-    page(sheet, fleet.site)
+    page(sheet, fleet.site, pages_high=1)
 
 
 def _scope(audit: Audit) -> list[tuple[str, str]]:

@@ -5,22 +5,29 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from openpyxl.cell import Cell
+from openpyxl.utils import get_column_letter
 from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.findings.finding import Finding, FindingCell
 from audit.report.workbook.sheets.layout import FILLS, LETTERS, MOST_LINKS, fill, link, page, table, title
 
 HEADINGS = (
-    "severity", "bus", "cubicle", "motor", "service", "relay", "function", "what is wrong", "judged", "present",
-    "permissible", "set by", "because", "why", "what to do", "assumptions", "source", "cell", "file", "check",
+    "", "bus", "cubicle", "motor", "relay", "function", "what is wrong", "judged", "present", "permissible",
+    "what to do", "cell", "service", "set by", "why", "assumptions", "source", "file", "check", "key",
 )  # fmt: skip
-WIDTHS = (11, 12, 9, 13, 20, 13, 8, 26, 22, 11, 20, 24, 42, 36, 32, 24, 24, 16, 18, 24)
-_CELL, _SEVERITY = 18, 1
+WIDTHS = (4, 10, 9, 11, 12, 8, 44, 20, 10, 18, 34, 22, 24, 34, 50, 34, 34, 26, 34, 40)
+PRINTED = 12
+KEY = ", ".join(f"{letter} {severity}" for severity, letter in LETTERS.items())
+_CELL, _SEVERITY = 12, 1
 
 
 def write_findings(findings: Sequence[Finding], sheet: Worksheet, site: str, own_file: str) -> None:
     """Write the findings sheet; `own_file` is the workbook that the sheet goes into, whose cells can be linked to."""
-    row = title(sheet, "Findings", "ordered by bus, cubicle and motor; permissible ranges are not instructions")
+    row = title(
+        sheet,
+        "Findings",
+        "ordered by bus, cubicle and motor; U unsafe, N nuisance, I inconsistent, O observation; a permissible range is not an instruction",
+    )
     ordered = sorted(findings, key=lambda f: (f.bus, f.cubicle, f.motor or f.name, f.function, f.check))
     table(sheet, row, HEADINGS, WIDTHS, (_row(finding) for finding in ordered))
     for offset, finding in enumerate(ordered, start=1):
@@ -31,7 +38,8 @@ def write_findings(findings: Sequence[Finding], sheet: Worksheet, site: str, own
         target = sheet.cell(row=row + offset, column=_CELL)
         if place is not None and place.file == own_file and offset < MOST_LINKS and isinstance(target, Cell):
             link(target, place.sheet, place.cell)
-    page(sheet, site)
+    last = row + max(len(ordered), 1)
+    page(sheet, site, print_area=f"A1:{get_column_letter(PRINTED)}{last}")
 
 
 def judged_cell(finding: Finding) -> FindingCell | None:
@@ -58,25 +66,26 @@ def _row(finding: Finding) -> list[object]:
     motor = finding.motor or finding.name
     if finding.setting_group:
         motor += f" (group {finding.setting_group})"
+    because = finding.because + (" (provisional)" if finding.provisional else "")
     return [
-        f"{LETTERS[finding.severity]}  {finding.severity}",
+        LETTERS[finding.severity],
         finding.bus,
         finding.cubicle,
         motor,
-        finding.service,
         finding.relay,
         finding.function,
-        finding.says,
+        f"{finding.says}: {because}",
         finding.label,
         finding.present_text,
         finding.range_text + state,
-        set_by(finding),
-        finding.because + (" (provisional)" if finding.provisional else ""),
-        finding.why,
         finding.remedy,
+        f"{place.sheet}!{place.cell}" if place else "",
+        finding.service,
+        set_by(finding),
+        finding.why,
         "; ".join(finding.assumptions),
         finding.source,
-        f"{place.sheet}!{place.cell}" if place else "",
         place.file if place else "",
         finding.check,
+        finding.key,
     ]

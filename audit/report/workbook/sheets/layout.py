@@ -21,6 +21,9 @@ LETTERS = {"unsafe": "U", "nuisance": "N", "inconsistent": "I", "observation": "
 MOST_LINKS = 60_000
 """A sheet holds at most 65,530 links."""
 
+LINE_HEIGHT = 13.0
+MOST_LINES = 14
+
 _THIN = Side(style="thin", color="B8C0C4")
 _ROW_BORDER = Border(bottom=_THIN)
 _UNPRINTABLE = re.compile(r"[\x00-\x08\x0b\x0c\x0e-\x1f]")
@@ -52,6 +55,20 @@ def title(sheet: Worksheet, text: str, below: str = "") -> int:
     return 4
 
 
+def lines_of(values: Sequence[object], widths: Sequence[float]) -> int:
+    """Tell how many lines a row needs: spreadsheet programs do not all fit heights when they open a file.
+
+    >>> lines_of(["a short one", "a text that is longer than its column is wide"], [20, 20])
+    3
+    """
+    most = 1
+    for value, width in zip(values, widths, strict=False):
+        if isinstance(value, str):
+            across = max(int(width * 0.95), 1)
+            most = max(most, sum(max(1, -(-len(line) // across)) for line in value.split("\n")))
+    return min(most, MOST_LINES)
+
+
 def table(
     sheet: Worksheet, first_row: int, headings: Sequence[str], widths: Sequence[float], rows: Iterable[Sequence[object]]
 ) -> int:
@@ -67,18 +84,21 @@ def table(
         row += 1
         for column, value in enumerate(values, start=1):
             put(sheet, row, column, value).border = _ROW_BORDER
+        sheet.row_dimensions[row].height = LINE_HEIGHT * lines_of(values, widths)
     sheet.freeze_panes = f"A{first_row + 1}"
     sheet.auto_filter.ref = f"A{first_row}:{get_column_letter(len(headings))}{max(row, first_row)}"
     sheet.print_title_rows = f"{first_row}:{first_row}"
     return row + 1
 
 
-def page(sheet: Worksheet, site: str) -> None:
+def page(sheet: Worksheet, site: str, *, pages_high: int = 0, print_area: str = "") -> None:
     """Set a sheet up for print: landscape, one page wide, caution and page number at the foot."""
+    if print_area:
+        sheet.print_area = print_area
     sheet.page_setup.orientation = "landscape"
     sheet.page_setup.paperSize = 9
     sheet.page_setup.fitToWidth = 1
-    sheet.page_setup.fitToHeight = 0
+    sheet.page_setup.fitToHeight = pages_high
     sheet.sheet_properties.pageSetUpPr = PageSetupProperties(fitToPage=True)
     sheet.page_margins.left = sheet.page_margins.right = 0.4
     sheet.page_margins.top, sheet.page_margins.bottom = 0.5, 0.8
