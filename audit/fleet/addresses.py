@@ -92,9 +92,7 @@ def pack(sheet_index: ArrayLike, row: ArrayLike, column: ArrayLike) -> NDArray[n
     ):
         if numbers.size and (numbers.min() < first or numbers.max() > last):
             raise ValueError(f"{name} lies outside {first} to {last}")
-    return np.asarray(
-        (sheet_index << (ROW_BITS + COLUMN_BITS)) | (row << COLUMN_BITS) | column, dtype=np.int64
-    )
+    return np.asarray((sheet_index << (ROW_BITS + COLUMN_BITS)) | (row << COLUMN_BITS) | column, dtype=np.int64)
 
 
 def unpack(

@@ -8,9 +8,9 @@ from pathlib import Path
 import numpy as np
 from numpy.typing import NDArray
 
-from audit.refusal import Refusal
 from audit.fleet.addresses import pack
 from audit.intake.cells import CellValue
+from audit.refusal import Refusal
 
 
 def no_cells() -> NDArray[np.int64]:

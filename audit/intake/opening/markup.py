@@ -2,11 +2,23 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from pathlib import Path
 
 from lxml import etree
 
 from audit.intake.opening.kinds import damaged
+
+
+class Stream:
+    """Pieces of a part as something that a parser can read from."""
+
+    def __init__(self, chunks: Iterator[bytes]) -> None:
+        self._chunks = chunks
+
+    def read(self, _size: int = -1) -> bytes:
+        """Give the next piece; b'' at the end."""
+        return next(self._chunks, b"")
 
 
 def parse_part(path: Path, name: str, content: bytes) -> etree._Element:

@@ -43,10 +43,10 @@ class Package:
 
 def read_package(archive: SafeArchive) -> Package:
     """Read the small parts of a package."""
-    workbook_part = _workbook_part(archive)
-    workbook = _parse(archive, workbook_part)
-    folder, name = posixpath.split(workbook_part)
-    relations = _relations(archive, posixpath.join(folder, "_rels", name + ".rels"), folder)
+    main_part = workbook_part(archive, "xl/workbook.xml")
+    workbook = _parse(archive, main_part)
+    folder, name = posixpath.split(main_part)
+    relations = read_relations(archive, posixpath.join(folder, "_rels", name + ".rels"), folder)
     sheets: dict[str, str] = {}
     hidden = set()
     date_1904 = False
@@ -82,7 +82,7 @@ def _parse(archive: SafeArchive, part: str) -> etree._Element:
     return parse_part(archive.path, part, content)
 
 
-def _relations(archive: SafeArchive, part: str, folder: str) -> dict[str, tuple[str, str]]:
+def read_relations(archive: SafeArchive, part: str, folder: str) -> dict[str, tuple[str, str]]:
     """Relations by id: kind, and the part they lead to if it is there."""
     found = archive.find(part)
     if found is None:
@@ -98,11 +98,12 @@ def _relations(archive: SafeArchive, part: str, folder: str) -> dict[str, tuple[
     return relations
 
 
-def _workbook_part(archive: SafeArchive) -> str:
-    for kind, part in _relations(archive, "_rels/.rels", "").values():
+def workbook_part(archive: SafeArchive, usual_name: str) -> str:
+    """Name of the part that lists the sheets."""
+    for kind, part in read_relations(archive, "_rels/.rels", "").values():
         if kind.endswith("/officeDocument") and part:
             return part
-    usual = archive.find("xl/workbook.xml")
+    usual = archive.find(usual_name)
     if usual is None:
         raise damaged(archive.path, "it has no workbook part")
     return usual

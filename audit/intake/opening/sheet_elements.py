@@ -13,21 +13,10 @@ from audit.intake.cells import CellError, UncachedFormula
 from audit.intake.opening.bounds import SHEET_COLUMNS
 from audit.intake.opening.facts import Cell, SheetFacts, check_reach, packed
 from audit.intake.opening.kinds import damaged
-from audit.intake.opening.markup import is_true, local_name
+from audit.intake.opening.markup import Stream, is_true, local_name
 from audit.intake.opening.package import CellFormats
 
 _REFERENCE = re.compile(r"([A-Z]{1,3})(\d{1,7})")
-
-
-class _Stream:
-    """Pieces of a part as something that a parser can read from."""
-
-    def __init__(self, chunks: Iterator[bytes]) -> None:
-        self._chunks = chunks
-
-    def read(self, _size: int = -1) -> bytes:
-        """Give the next piece; b'' at the end."""
-        return next(self._chunks, b"")
 
 
 def scan_elements(path: Path, sheet: str, part: str, chunks: Iterator[bytes], formats: CellFormats) -> SheetFacts:
@@ -37,7 +26,7 @@ def scan_elements(path: Path, sheet: str, part: str, chunks: Iterator[bytes], fo
     row = column = 0
     try:
         for event, element in etree.iterparse(
-            _Stream(chunks),
+            Stream(chunks),
             events=("start", "end"),
             resolve_entities=False,
             no_network=True,

@@ -14,9 +14,12 @@ from audit.intake.opening.calamine_reader import RawSheet, read_sheets
 from audit.intake.opening.facts import SheetFacts, WorkbookFacts, check_extent, united
 from audit.intake.opening.grids import SheetGrid, UnreadableWorkbook, WorkbookGrids
 from audit.intake.opening.kinds import EXPECTED, FileKind, recognise
+from audit.intake.opening.ods_scan import ods_facts
 from audit.intake.opening.package import read_package
 from audit.intake.opening.sheet_scan import scan_sheet
 from audit.intake.opening.text_table import read_text_table
+from audit.intake.opening.xls_scan import xls_facts
+from audit.intake.opening.xlsb_scan import xlsb_facts
 
 
 def open_workbook(path: Path) -> WorkbookGrids:
@@ -65,20 +68,11 @@ def _xlsx_facts(path: Path, data: bytes) -> WorkbookFacts:
     return WorkbookFacts(sheets, package.date_1904, package.own_sheets)
 
 
-def _other_archive_facts(path: Path, data: bytes) -> WorkbookFacts:
-    SafeArchive(path, data).check_the_rest()
-    return WorkbookFacts({})
-
-
-def _no_facts(path: Path, data: bytes) -> WorkbookFacts:
-    return WorkbookFacts({})
-
-
 FACTS_OF_KIND: dict[FileKind, Callable[[Path, bytes], WorkbookFacts]] = {
     FileKind.XLSX: _xlsx_facts,
-    FileKind.XLSB: _other_archive_facts,
-    FileKind.ODS: _other_archive_facts,
-    FileKind.XLS: _no_facts,
+    FileKind.XLSB: xlsb_facts,
+    FileKind.ODS: ods_facts,
+    FileKind.XLS: xls_facts,
 }
 
 
@@ -93,7 +87,7 @@ def _grid(sheet: RawSheet, facts: SheetFacts | None) -> SheetGrid:
         hidden=sheet.hidden,
         hidden_rows=frozenset(facts.hidden_rows),
         hidden_columns=frozenset(facts.hidden_columns),
-        merged=sheet.merged,
+        merged=sheet.merged or tuple(facts.merged),
         percent_cells=united(facts.percent),
         struck_cells=united(facts.struck),
         notes=tuple(facts.notes),
