@@ -23,11 +23,8 @@ _CELL, _SEVERITY = 12, 1
 
 def write_findings(findings: Sequence[Finding], sheet: Worksheet, site: str, own_file: str) -> None:
     """Write the findings sheet; `own_file` is the workbook that the sheet goes into, whose cells can be linked to."""
-    row = title(
-        sheet,
-        "Findings",
-        "ordered by bus, cubicle and motor; U unsafe, N nuisance, I inconsistent, O observation; a permissible range is not an instruction",
-    )
+    below = f"ordered by bus, cubicle and motor; {KEY}; a permissible range is not an instruction"
+    row = title(sheet, "Findings", below)
     ordered = sorted(findings, key=lambda f: (f.bus, f.cubicle, f.motor or f.name, f.function, f.check))
     table(sheet, row, HEADINGS, WIDTHS, (_row(finding) for finding in ordered))
     for offset, finding in enumerate(ordered, start=1):
