@@ -14,7 +14,7 @@ from audit.checks.verdicts import Outcome
 from audit.derivation.recipes import lookup_for
 from audit.derivation.trace import Step, Trace, day_text, shown_number
 from audit.derivation.workings import CHILD_OF
-from audit.expression.nodes import Name, Node, names_in
+from audit.expression.nodes import Name, Node, names_in, names_over_rows
 from audit.expression.text import plain_number, render
 from audit.expression.units import UnitCheck
 from audit.findings.audit import Audit
