@@ -10,6 +10,7 @@ import numpy as np
 
 from tests.sites import cables, switchgear
 from tests.sites.current_transformers import earth_ct, phase_cts, voltage_transformers
+from tests.sites.curves import clearing_curve, limit_curves, melting_curve
 from tests.sites.families import Family
 from tests.sites.machine import (
     LOWEST_START_VOLTAGE_PU,
@@ -46,6 +47,8 @@ def add_family(site: Site, family: Family, random: np.random.Generator) -> None:
     common |= {name: value for name, value in family.facts.items() if not name.startswith("code_letter")}
     if family.facts.get("code_letter_on_plate"):
         common["locked_rotor_kva_letter"] = machine.code_letter
+    if common.pop("limit_curves_supplied", False):
+        common |= limit_curves(machine, common)
     members = []
     for tag in family.tags:
         motor: Record = {"motor": tag, **common}
@@ -71,11 +74,11 @@ def _start_times(machine: Machine, inertia: float, family: Family) -> tuple[floa
         return 0.0, 0.0
     if family.starting_method == "soft_starter":
         usual = soft_start_time_s(machine, inertia, family.load, family.loading, SOFT_START_MULTIPLE, 1.0)
-        slow = soft_start_time_s(machine, inertia, family.load, family.loading, SOFT_START_MULTIPLE, 0.9)
+        slow = soft_start_time_s(machine, inertia, family.load, family.loading, SOFT_START_MULTIPLE, 0.85)
         return slow, usual
     if family.starting_method == "star_delta":
         usual = run_up_time_s(machine, inertia, family.load, 1 / math.sqrt(3), family.loading)
-        return run_up_time_s(machine, inertia, family.load, 0.92 / math.sqrt(3), family.loading), usual
+        return run_up_time_s(machine, inertia, family.load, 0.85 / math.sqrt(3), family.loading), usual
     return tuple(
         run_up_time_s(machine, inertia, family.load, voltage, family.loading)
         for voltage in (LOWEST_START_VOLTAGE_PU, 1.0)
@@ -125,7 +128,7 @@ def _plate(machine: Machine, family: Family, inertia: float, usual_s: float, slo
             "stated_start_time_s": up(usual_s, 0.1),
             "stated_start_time_at_lowest_voltage_s": up(slowest_s, 0.1),
             "lowest_start_voltage_pct": 100
-            * (LOWEST_START_VOLTAGE_PU if family.starting_method == "direct_on_line" else 0.9),
+            * (LOWEST_START_VOLTAGE_PU if family.starting_method == "direct_on_line" else 0.85),
             "motor_inertia_kgm2": machine.inertia_kgm2,
             "load_inertia_kgm2": inertia,
             "breakdown_torque_ratio": machine.breakdown_torque,
@@ -151,6 +154,8 @@ def _device(motor: Record, machine: Machine, family: Family, bus: Record, length
         case "fused_contactor":
             motor |= switchgear.contactor_with_fuses(high_voltage, current, locked, direct)
             must_see = 10 * number(motor, "fuse_rating_a")
+            motor["fuse_melting_curve"] = melting_curve(number(motor, "fuse_rating_a"))
+            motor["fuse_clearing_curve"] = clearing_curve(number(motor, "fuse_rating_a"))
         case "fused_switch":
             motor |= switchgear.fused_switch(current)
             must_see = 8 * number(motor, "fuse_rating_a")

@@ -108,7 +108,9 @@ def _thermal(setter: Setter, greatest_a: float, slowest_s: float) -> None:
     setter.put("thermal_pickup_a", multiple * number(motor, "full_load_a"))
     pickup = number(relay, "thermal_pickup_a")
     hot, cold = number(motor, "safe_stall_hot_s"), number(motor, "safe_stall_cold_s")
-    setter.put("hot_cold_ratio", hot / cold, "down")
+    relay["thermal_hot_curve"] = motor.get("relay_hot_curve", "stall_ratio")
+    if relay["thermal_hot_curve"] == "stall_ratio":
+        setter.put("hot_cold_ratio", hot / cold, "down")
     locked = number(motor, "locked_rotor_a")
     if relay["layout"] == "lv_long" and not hazardous:
         relay["thermal_trip_class"] = _trip_class(motor, locked / pickup, greatest_a / pickup, slowest_s)
@@ -116,7 +118,7 @@ def _thermal(setter: Setter, greatest_a: float, slowest_s: float) -> None:
         wanted = min(0.82 * cold, 0.85 * number(motor, "te_s") if "te_s" in motor else math.inf)
         if motor.get("speed_switch_fitted"):
             # the speed switch guards the stalled motor, the thermal element has to let the long start through
-            wanted = 1.35 * slowest_s * cold / hot
+            wanted = 1.5 * slowest_s * cold / hot
         setter.put("heating_time_constant_s", wanted / math.log(locked**2 / (locked**2 - pickup**2)))
         setter.put("cooling_time_constant_s", 3 * number(relay, "heating_time_constant_s"), "up")
         setter.put("unbalance_weight", min(max(175 / (locked / number(motor, "full_load_a")) ** 2, 3.0), 8.0))
@@ -171,10 +173,11 @@ def _starting(setter: Setter, longest_s: float, slowest_s: float, starts: Sequen
 
 def _jam(setter: Setter, slowest_s: float) -> None:
     motor = setter.motor
+    multiple = 2.0
+    if number(motor, "rated_voltage_v") > 1000 or motor.get("driven_machine") != "crusher":
+        multiple = JAM_MULTIPLES.get(str(motor.get("driven_machine")), 2.0)
     if setter.turn("jam", motor.get("driven_machine") in JAMMING_MACHINES or bool(motor.get("relay_jam"))):
-        setter.put(
-            "jam_trip_pickup_a", JAM_MULTIPLES.get(str(motor["driven_machine"]), 2.0) * number(motor, "full_load_a")
-        )
+        setter.put("jam_trip_pickup_a", multiple * number(motor, "full_load_a"))
         setter.put("jam_trip_delay_s", 3.0 if motor["driven_machine"] == "crusher" else 2.0)
         if motor.get("relay_blocks_jam_by_state"):
             setter.relay["jam_blocked_by_state"] = True

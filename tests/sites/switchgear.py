@@ -24,11 +24,13 @@ def breaker(high_voltage: bool, full_load_a: float) -> Record:
 
 
 def contactor_with_fuses(high_voltage: bool, full_load_a: float, locked_rotor_a: float, direct: bool) -> Record:
-    """Fused contactor: the fuse carries twice the start for a while and takes every short circuit."""
-    fuse = next_up(FUSES_A, max(1.6 * full_load_a, (0.36 if direct else 0.2) * locked_rotor_a))
-    rated = 400.0 if high_voltage else next_up(CONTACTORS_A, max(1.05 * full_load_a, locked_rotor_a / 8))
+    """Fused contactor: the fuse carries the start and takes every short circuit."""
+    wanted = 1.6 * full_load_a if high_voltage else 1.2 * full_load_a
+    fuse = next_up(FUSES_A, max(wanted, locked_rotor_a / 6.5 if direct else 0.0))
+    # the contactor must break what the fuse leaves to it, up to 17 times full load; it breaks 12 times its rating
+    rated = 400.0 if high_voltage else next_up(CONTACTORS_A, max(1.5 * full_load_a, locked_rotor_a / 8))
     return {
-        "interrupting_rating_ka": 4.5 if high_voltage else near(8 * rated / 1000, 0.01),
+        "interrupting_rating_ka": 4.5 if high_voltage else near(12 * rated / 1000, 0.01),
         "device_rated_current_a": rated,
         "contactor_rated_current_a": rated,
         "device_opening_time_s": 0.12 if high_voltage else 0.05,

@@ -11,6 +11,7 @@ STEERING = (
     "relay_blocks_jam_by_state",
     "relay_trips_on_winding",
     "relay_backup_51",
+    "relay_hot_curve",
 )
 """Entries of a motor's record that steer the choice of settings and stand in no workbook."""
 OF_OVERLOAD_RELAY = (

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from datetime import date
 
+from tests.sites.curves import melting_curve
 from tests.sites.families import Family, lettered, numbered
 from tests.sites.plant import Value
 
@@ -36,7 +37,8 @@ FAMILIES_6600 = (
         load="unloaded",
         inertia=0.48,
         length_m=(120, 260),
-        facts=LARGE | {"critical": True, "relay_backup_51": True, "relay_filter": "offset_rejected"},
+        facts=LARGE
+        | {"critical": True, "relay_backup_51": True, "limit_curves_supplied": True, "relay_filter": "offset_rejected"},
         **BREAKER,
     ),
     Family(
@@ -51,7 +53,7 @@ FAMILIES_6600 = (
         load="unloaded",
         inertia=0.51,
         length_m=(120, 260),
-        facts=LARGE | {"relay_filter": "offset_rejected"},
+        facts=LARGE | {"relay_filter": "offset_rejected", "limit_curves_supplied": True},
         **BREAKER,
     ),
     Family(
@@ -74,6 +76,8 @@ FAMILIES_6600 = (
             "speed_switch_fitted": True,
             "speed_switch_delay_s": 5.0,
             "relay_jam": True,
+            "needed_cold_starts": 1.0,
+            "needed_hot_starts": 1.0,
             "differential_cts": "flux_balance",
         },
     ),
@@ -111,7 +115,13 @@ FAMILIES_6600 = (
         least_loading=0.45,
         length_m=(80, 140),
         **BREAKER,
-        facts=SMALL | {"undervoltage_by_bus_scheme": True, "relay_blocks_jam_by_state": True},
+        facts=SENSORS
+        | {
+            "stator_leads": 6.0,
+            "differential_cts": "flux_balance",
+            "undervoltage_by_bus_scheme": True,
+            "relay_blocks_jam_by_state": True,
+        },
     ),
     Family(
         ("CR-102",),
@@ -216,7 +226,7 @@ FAMILIES_6600 = (
         start_multiple=6.1,
         inertia=0.20,
         length_m=(380, 520),
-        facts=SMALL,
+        facts=SMALL | {"relay_hot_curve": "all_load", "backup_fuse_melting_curve": melting_curve(800.0)},
         **BREAKER,
     ),
     Family(
@@ -395,6 +405,8 @@ FAMILIES_3300 = (
             "speed_switch_fitted": True,
             "speed_switch_delay_s": 5.0,
             "relay_jam": True,
+            "needed_cold_starts": 1.0,
+            "needed_hot_starts": 1.0,
         },
     ),
     Family(

@@ -35,7 +35,7 @@ FAMILIES_690 = (
         4,
         inertia=0.8,
         facts=STARTS | {"belt_drive": True},
-        **BREAKER,
+        **(BREAKER | {"earth_ct": "residual"}),
     ),
     Family(("FP-901",), "Fire water pump", QUARRY, "pump", "SWB-7", 160, 2, facts={"must_run": True}, **BREAKER),
     Family(

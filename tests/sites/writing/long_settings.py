@@ -76,6 +76,7 @@ WORDS = (
     ("50", "short_circuit_filter", "50 Filter"),
     ("50", "short_circuit_blocked_above_device_rating", "50 Blocked By Current"),
     ("50", "short_circuit_opens", "50 Trips"),
+    ("49", "thermal_hot_curve", "Hot Curve"),
     ("49", "thermal_opens", "49 Trips"),
     ("46", "unbalance_base", "46 Base"),
     ("46", "unbalance_opens", "46 Trips"),

@@ -35,7 +35,7 @@ ELEMENTS = (
         ("short_circuit_opens", "50 Trips"),
     ),
     ("overcurrent", "51", ("trip_pickup_a", "time_multiplier"), ("overcurrent_curve", "51 Curve")),
-    ("thermal", "49", ("pickup_a",), ("thermal_opens", "49 Trips")),
+    ("thermal", "49", ("pickup_a",), ("thermal_hot_curve", "Thermal Hot Curve"), ("thermal_opens", "49 Trips")),
     (
         "unbalance",
         "46",

@@ -69,6 +69,7 @@ SPELLINGS: dict[str, dict[str, str]] = {
         "coupler": "Bus tie",
     },
     "short_circuit_filter": {"rms": "True RMS", "offset_rejected": "DC rejected", "peak": "Peak"},
+    "thermal_hot_curve": {"all_load": "Full", "stall_ratio": "Hot/cold ratio", "none": "None"},
     "unbalance_base": {"full_load": "I2/FLA", "positive_sequence": "I2/I1", "deviation": "Deviation"},
     "differential_kind": {"two_sets": "Two CT sets", "flux_balance": "Flux balance"},
     "overcurrent_curve": {"long_time_inverse": "LTI", "iec_extremely_inverse": "IEC EI"},

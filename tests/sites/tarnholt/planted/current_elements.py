@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from tests.sites.curves import clearing_curve, melting_curve
 from tests.sites.families import lettered, numbered
 from tests.sites.tarnholt.planted.defect import Defect, Of, inconsistent, nuisance, observation, unsafe
 
@@ -15,11 +16,11 @@ SHORT_CIRCUIT = (
     Defect(
         ("KM-201",),
         "short_circuit_trip_pickup_a",
-        5750.0,
+        6250.0,
         (
             unsafe("short-circuit-sees-least-fault", "above 0.8 x the least phase-to-phase fault at the motor"),
             observation("short-circuit-sees-least-fault-well", "above half of the same fault"),
-            observation("setting-typical-of-fleet", "31 x full load where the fleet has 7 to 11 x"),
+            observation("setting-typical-of-fleet", "33 x full load where the fleet has 7 to 11 x"),
         ),
     ),
     Defect(
@@ -50,6 +51,34 @@ SHORT_CIRCUIT = (
     ),
 )
 
+FUSES = (
+    Defect(
+        lettered("P-705"),
+        "fuse_melting_curve",
+        melting_curve(31.5),
+        (
+            nuisance("fuse-carries-start", "the curve of a 31.5 A fuse: melts before the start is over"),
+            unsafe("takeover-inside-contactor-rating", "the fuse takes over below the start current"),
+        ),
+        table="motor",
+        alongside={"fuse_clearing_curve": clearing_curve(31.5)},
+    ),
+    Defect(
+        ("CR-101",),
+        "interrupting_rating_ka",
+        0.8,
+        (unsafe("takeover-inside-contactor-rating", "the contactor has to break more than its 0.8 kA"),),
+        table="motor",
+    ),
+    Defect(
+        lettered("P-115"),
+        "backup_fuse_melting_curve",
+        melting_curve(250.0),
+        (observation("relay-ahead-of-upstream-fuse", "the fuse melts before relay and breaker have cleared"),),
+        table="motor",
+    ),
+)
+
 THERMAL = (
     Defect(
         ("KM-210",),
@@ -72,9 +101,9 @@ THERMAL = (
         (unsafe("thermal-pickup-within-service-factor", "1.25 x full load at service factor 1.0; 1.15 x at most"),),
     ),
     Defect(
-        ("CR-110",),
+        lettered("P-160"),
         "thermal_pickup_a",
-        Of("full_load_a", 0.90),
+        Of("full_load_a", 0.85),
         (nuisance("thermal-pickup-carries-load", "below 1.05 x the greatest running current"),),
     ),
     Defect(
@@ -290,11 +319,11 @@ DIFFERENTIAL = (
     Defect(
         ("F-301",),
         "differential_run_pickup_a",
-        28.0,
-        (unsafe("differential-run-pickup-sensitive", "28 A where flux balance allows 20 A and less"),),
+        24.0,
+        (unsafe("differential-run-pickup-sensitive", "24 A where flux balance allows 20 A and less"),),
     ),
     Defect(
         ("F-301",), "differential_run_delay_s", 0.14, (unsafe("differential-fast-enough", "0.14 s; 0.1 s at most"),)
     ),
 )
-CURRENT_ELEMENTS = (*SHORT_CIRCUIT, *THERMAL, *UNBALANCE, *EARTH_FAULT, *DIFFERENTIAL)
+CURRENT_ELEMENTS = (*SHORT_CIRCUIT, *FUSES, *THERMAL, *UNBALANCE, *EARTH_FAULT, *DIFFERENTIAL)

@@ -59,8 +59,12 @@ MOTOR_DATA = (
     Defect(
         ("FD-302",),
         "full_load_a",
-        Of("full_load_a", 1.73),
-        (inconsistent("register-full-load-plausible", "power, efficiency and power factor give less by root three"),),
+        Of("full_load_a", 1.341),
+        (
+            inconsistent(
+                "register-full-load-plausible", "power, efficiency and power factor give less: as if the kW were hp"
+            ),
+        ),
         table="motor",
     ),
     Defect(

@@ -102,9 +102,9 @@ JAM = (
         (nuisance("jam-pickup-above-load", "1.15 x full load; 1.2 x at least"),),
     ),
     Defect(
-        ("HM-601",),
+        ("KM-201",),
         "jam_trip_pickup_a",
-        Of("full_load_a", 4.5),
+        Of("full_load_a", 4.0),
         (unsafe("jam-pickup-below-stall", "above 0.75 x the locked-rotor current"),),
     ),
     Defect(

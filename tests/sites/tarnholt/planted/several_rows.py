@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from datetime import date, datetime, timedelta
 
+from tests.sites.curves import as_points
 from tests.sites.plant import Site, Value, number, text
 from tests.sites.tarnholt.planted.defect import shown
 
@@ -115,7 +116,7 @@ def starts_drift(site: Site) -> list[Row]:
             raise TypeError("a recorded start needs its moment")
         years = (moment - first).total_seconds() / (365.25 * 86400)
         scatter = number(start, "start_time_s") / sound
-        start["start_time_s"] = round((2.35 + 1.04 * years) * (0.8 + 0.2 * scatter), 2)
+        start["start_time_s"] = round((2.25 + 1.12 * years) * (0.8 + 0.2 * scatter), 2)
     last = number(starts[-1], "start_time_s")
     why = "one second longer from year to year; passes the timer within the next"
     return [_row("KM-202", "start-times-not-drifting", "observation", "start_time_s", last, sound, why)]
@@ -166,6 +167,18 @@ def same_jam_pickup(site: Site) -> list[Row]:
     return [_row("; ".join(tags), "setting-not-copied-blindly", "inconsistent", "jam_trip_pickup_a", 160.0, sound, why)]
 
 
+def limit_curve_dented(site: Site) -> list[Row]:
+    """Supply a thermal limit that lies lower between twice and three times full load."""
+    motor = site.motor("KM-202")
+    sound = text(motor, "hot_limit_curve")
+    full_load = number(motor, "full_load_a")
+    points = [tuple(float(part.split()[0]) for part in point.split(": ")) for point in sound.split("; ")]
+    lowered = [(current, time * (0.35 if 1.9 < current / full_load < 3.1 else 1.0)) for current, time in points]
+    motor["hot_limit_curve"] = as_points(lowered)
+    why = "between 2 and 3 x full load the relay trips from hot after the limit"
+    return [_row("KM-202", "thermal-under-limit-curve", "unsafe", "hot_limit_curve", as_points(lowered), sound, why)]
+
+
 SEVERAL_ROWS = (
     tag_twice,
     relay_without_settings,
@@ -177,4 +190,5 @@ SEVERAL_ROWS = (
     motor_replaced_since_export,
     ct_too_large,
     same_jam_pickup,
+    limit_curve_dented,
 )
