@@ -42,7 +42,7 @@ def awg_mm2(gauge: float) -> float:
     return math.pi / 4 * diameter_mm * diameter_mm
 
 
-def wire_size(text: str, metric_when_bare: bool = True) -> WireSize | None:
+def wire_size(text: str) -> WireSize | None:
     """Read the text of a conductor size; None where it is none.
 
     >>> wire_size("3C x 70 mm²"), wire_size("2x(3x240)"), wire_size("250 MCM").mm2.__round__(1)
@@ -73,11 +73,11 @@ def wire_size(text: str, metric_when_bare: bool = True) -> WireSize | None:
                 written = inner
             else:
                 runs, written = int(match["runs"]), inner
-    size = _size(written, metric_when_bare)
+    size = _size(written)
     return WireSize(size, runs) if size is not None else None
 
 
-def _size(written: str, metric_when_bare: bool) -> float | None:
+def _size(written: str) -> float | None:
     match = _KCMIL.fullmatch(written)
     if match:
         return float(match["size"]) * MM2_PER_KCMIL
@@ -88,6 +88,6 @@ def _size(written: str, metric_when_bare: bool) -> float | None:
     if match:
         return awg_mm2(int(match["number"] or match["plain"] or match["after"]))
     match = _METRIC.fullmatch(written)
-    if match and (metric_when_bare or not re.fullmatch(r"[\d.,]+", written)):
+    if match:
         return float(match["size"].replace(",", "."))
     return None

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable
+from collections.abc import Mapping
 
 import numpy as np
 import pandas as pd
@@ -12,6 +12,7 @@ from numpy.typing import NDArray
 from audit.fleet.column import NO, UNKNOWN, YES
 from audit.intake.celltext.reading import CellKind
 from audit.intake.celltext.truths import read_truth_cells
+from audit.intake.resolve.names import exact
 from audit.vocabulary.quantities import Quantity, fold_choice
 
 UNREAD = -2
@@ -35,7 +36,7 @@ def truth_of(text: str, part: str | None = None) -> int:
     >>> truth_of("Enabled"), truth_of("alarm only", "trip_on"), truth_of("alarm only", "alarm_on"), truth_of("maybe")
     (2, 0, 2, 1)
     """
-    word = exact_word(text)
+    word = exact(text)
     if part in ("trip_on", "alarm_on"):
         for words, codes in ((_BOTH, (YES, YES)), (_TRIPS, (YES, NO)), (_ALARMS, (NO, YES))):
             if word in words:
@@ -44,11 +45,6 @@ def truth_of(text: str, part: str | None = None) -> int:
     if reading.kind is CellKind.TRUTH:
         return YES if reading.number else NO
     return UNKNOWN
-
-
-def exact_word(text: str) -> str:
-    """Fold a word for look-up."""
-    return " ".join(text.casefold().split())
 
 
 def choice_of(quantity: Quantity, text: str) -> tuple[int, bool]:
@@ -80,9 +76,8 @@ def _without_signs(quantity: Quantity) -> dict[str, str]:
     return {bare: min(choices) for bare, choices in found.items() if bare and len(choices) == 1}
 
 
-def _word_within(spellings: Iterable[str], text: str) -> str | None:
+def _word_within(known: Mapping[str, str], text: str) -> str | None:
     """Give the choice of the longest known words in a text, unless words of different choices are equally long."""
-    known = dict(spellings.items()) if isinstance(spellings, dict) else {}
     words = fold_choice(_PUNCTUATION.sub(" ", text.casefold()))
     padded = f" {words} "
     found = {spelled for spelled in known if f" {spelled} " in padded or f" {spelled}s " in padded}
