@@ -87,12 +87,15 @@ class SafeArchive:
             raise damaged(self.path, f"part {name} is not what the archive says of it")
         self._checked.add(name)
 
+    def unread(self, *suffixes: str) -> list[str]:
+        """Names of the parts with such endings that nobody has read here to their end."""
+        return [name for name in self._parts if name not in self._checked and _spelling(name).endswith(suffixes)]
+
     def check_the_rest(self) -> None:
         """Inflate and check every part that a reader may open and nobody has read here yet."""
-        for name in self._parts:
-            if name not in self._checked and _spelling(name).endswith(MARKUP_SUFFIXES + BINARY_SUFFIXES):
-                for _ in self.chunks(name):
-                    pass
+        for name in self.unread(*MARKUP_SUFFIXES, *BINARY_SUFFIXES):
+            for _ in self.chunks(name):
+                pass
 
     def _inflated(self, info: zipfile.ZipInfo) -> Iterator[bytes]:
         packed = self._packed(info)

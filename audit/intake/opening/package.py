@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import json
 import posixpath
 from collections.abc import Iterator
 from dataclasses import dataclass
@@ -16,8 +15,11 @@ from audit.intake.opening.grids import UnreadableWorkbook
 from audit.intake.opening.kinds import damaged
 from audit.intake.opening.markup import attribute, is_true, local_name, parse_part
 
-OWN_SHEETS_PROPERTY = "motor-audit-sheets"
-"""Custom document property of an annotated copy: a JSON list of the sheets that were added to it."""
+ANNOTATED_COPY_PROPERTY = "Motor settings audit"
+"""Custom document property by which an annotated copy is recognised."""
+
+OWN_SHEET_MARK = "_motor_settings_audit"
+"""Hidden name of each sheet that an audit added."""
 
 MAXIMUM_SMALL_PART_BYTES = 64 * MEGABYTE
 
@@ -35,7 +37,6 @@ class Package:
     """What the small parts say: worksheets by name and their parts, formats, date system, own sheets."""
 
     sheets: dict[str, str]
-    hidden: frozenset[str]
     formats: CellFormats
     date_1904: bool
     own_sheets: frozenset[str]
@@ -48,7 +49,7 @@ def read_package(archive: SafeArchive) -> Package:
     folder, name = posixpath.split(main_part)
     relations = read_relations(archive, posixpath.join(folder, "_rels", name + ".rels"), folder)
     sheets: dict[str, str] = {}
-    hidden = set()
+    positions: list[str] = []
     date_1904 = False
     for element in workbook.iter():
         kind = local_name(element)
@@ -56,22 +57,22 @@ def read_package(archive: SafeArchive) -> Package:
             date_1904 = is_true(attribute(element, "date1904"))
         elif kind == "sheet":
             sheet_name = element.get("name") or ""
+            if sheet_name in positions:
+                raise damaged(archive.path, f"two sheets are called '{sheet_name}'")
+            positions.append(sheet_name)
             relation, part = relations.get(attribute(element, "id") or "", ("", ""))
             if relation.endswith("/worksheet") and part:
                 sheets[sheet_name] = part
-            if element.get("state") in ("hidden", "veryHidden"):
-                hidden.add(sheet_name)
-    if len(sheets) > MAXIMUM_SHEETS:
+    if len(positions) > MAXIMUM_SHEETS:
         raise UnreadableWorkbook(
-            archive.path, f"the workbook has {len(sheets):,} sheets", f"at most {MAXIMUM_SHEETS:,}", "Split it."
+            archive.path, f"the workbook has {len(positions):,} sheets", f"at most {MAXIMUM_SHEETS:,}", "Split it."
         )
     styles = next((part for kind, part in relations.values() if kind.endswith("/styles")), "")
     return Package(
         sheets,
-        frozenset(hidden),
         _formats(_parse(archive, styles)) if styles else CellFormats(),
         date_1904,
-        _own_sheets(archive),
+        _own_sheets(archive, workbook, positions),
     )
 
 
@@ -140,17 +141,18 @@ def _formats(styles: etree._Element) -> CellFormats:
     return CellFormats(frozenset(percent), frozenset(struck))
 
 
-def _own_sheets(archive: SafeArchive) -> frozenset[str]:
-    part = archive.find("docProps/custom.xml")
-    if part is None:
+def _own_sheets(archive: SafeArchive, workbook: etree._Element, positions: list[str]) -> frozenset[str]:
+    """Sheets that an earlier audit added: each carries a hidden name of its own, in a workbook that says so."""
+    if not any(
+        element.get("name") == ANNOTATED_COPY_PROPERTY
+        for kind, part in read_relations(archive, "_rels/.rels", "").values()
+        if kind.endswith("/custom-properties") and part
+        for element in _parse(archive, part)
+    ):
         return frozenset()
-    for element in _parse(archive, part):
-        if element.get("name") != OWN_SHEETS_PROPERTY:
-            continue
-        try:
-            names = json.loads("".join("".join(map(str, child.itertext())) for child in element))
-        except json.JSONDecodeError:
-            return frozenset()
-        if isinstance(names, list):
-            return frozenset(name for name in names if isinstance(name, str))
-    return frozenset()
+    marked = (
+        _number(name.get("localSheetId"))
+        for name in _children(workbook, "definedNames", "definedName")
+        if name.get("name") == OWN_SHEET_MARK
+    )
+    return frozenset(positions[position] for position in marked if 0 <= position < len(positions))

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import hashlib
+import re
 from collections.abc import Callable
 from functools import partial
 from pathlib import Path
@@ -20,6 +21,9 @@ from audit.intake.opening.sheet_scan import scan_sheet
 from audit.intake.opening.text_table import read_text_table
 from audit.intake.opening.xls_scan import xls_facts
 from audit.intake.opening.xlsb_scan import xlsb_facts
+
+WORKSHEET = re.compile(rb"<(?:\w+:)?worksheet\b")
+NOTHING_KNOWN = "error cells, formulas without a result, percentages and hidden rows are not known for this sheet"
 
 
 def open_workbook(path: Path) -> WorkbookGrids:
@@ -64,6 +68,10 @@ def _xlsx_facts(path: Path, data: bytes) -> WorkbookFacts:
         for name, part in package.sheets.items()
         if name not in package.own_sheets
     }
+    for part in archive.unread(".xml"):
+        # a reader may find its way to a sheet that the workbook does not list as one
+        if WORKSHEET.search(next(archive.chunks(part), b"")[:8192].replace(b"\0", b"")):
+            scan_sheet(path, part, part, partial(archive.chunks, part), package.formats)
     archive.check_the_rest()
     return WorkbookFacts(sheets, package.date_1904, package.own_sheets)
 
@@ -78,7 +86,7 @@ FACTS_OF_KIND: dict[FileKind, Callable[[Path, bytes], WorkbookFacts]] = {
 
 def _grid(sheet: RawSheet, facts: SheetFacts | None) -> SheetGrid:
     if facts is None:
-        return SheetGrid(sheet.name, sheet.rows, hidden=sheet.hidden, merged=sheet.merged)
+        return SheetGrid(sheet.name, sheet.rows, hidden=sheet.hidden, merged=sheet.merged, notes=(NOTHING_KNOWN,))
     for (row, column), marker in facts.markers.items():
         _set(sheet.rows, row, column, marker)
     return SheetGrid(

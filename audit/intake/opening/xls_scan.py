@@ -78,6 +78,8 @@ def xls_facts(path: Path, data: bytes) -> WorkbookFacts:
                 sheet.note(kind, content)
     except (struct.error, IndexError) as error:
         raise damaged(path, "a record is shorter than its kind needs") from error
+    if len(sheets) != len(book.sheets):
+        raise damaged(path, "a sheet does not begin where the workbook says")
     return WorkbookFacts(sheets, book.date_1904)
 
 

@@ -44,6 +44,9 @@ def xlsb_facts(path: Path, data: bytes) -> WorkbookFacts:
                 kind, part = relations.get(relation, ("", ""))
                 if kind.endswith("/worksheet") and part:
                     sheets[sheet_name] = _scan(path, sheet_name, archive.read(part), percent)
+        for part in archive.unread(".bin"):
+            if "worksheets/" in part.replace("\\", "/").lower():
+                _scan(path, part, archive.read(part), percent)
     except (struct.error, IndexError) as error:
         raise damaged(path, "a record is shorter than its kind needs") from error
     archive.check_the_rest()
