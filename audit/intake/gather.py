@@ -24,7 +24,7 @@ from audit.intake.recognition.row_kinds import rows_in_words
 from audit.intake.recognition.sheets import Records, Sheet, said
 from audit.intake.recognition.tables import Verdict, table_of
 from audit.intake.resolve.names import exact
-from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map
+from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map, same_header
 
 Progress = Callable[[str], None]
 ORDER = ("wide", "long", "block", "")
@@ -217,10 +217,11 @@ def _read(candidate: _Candidate, run: _Run) -> None:
         grid.decimal_comma,
         run.map.stand_ins,
         run.map.zero_means_off,
+        run.map.day_first,
         run.complaints,
         run.questions,
     )
-    sheet = Sheet(grid, run.book.index(candidate.file, grid.name), source, run.records, day_first=run.map.day_first)
+    sheet = Sheet(grid, run.book.index(candidate.file, grid.name), source, run.records, mapped=candidate.mapped)
     if not _by_layout(candidate, sheet, run):
         source.remark(-1, "no table was recognised on this sheet", "a table with headers", "It is left unread.")
         return
@@ -242,30 +243,39 @@ def _by_layout(candidate: _Candidate, sheet: Sheet, run: _Run) -> bool:
     if candidate.layout == "block":
         return read_block(sheet, run.tags(), relay, group)
     if candidate.layout == "wide" and candidate.heading and candidate.verdict:
-        columns = _mapped(candidate.heading, mapped)
         verdict = candidate.verdict
+        columns = _mapped(candidate.heading, verdict, mapped, sheet.source)
         return read_wide(sheet, candidate.heading, verdict.table, verdict.matches, sheet.grid.height, columns, group)
     return False
 
 
-def _mapped(heading: Heading, entry: MappedSheet | None) -> dict[int, Plan]:
+def _mapped(heading: Heading, verdict: Verdict, entry: MappedSheet | None, source: Source) -> dict[int, Plan]:
     """Give the plans of the columns that the site map speaks of."""
-    if entry is None:
-        return {}
-    plans = {}
-    for column in heading.texts:
-        said_of = entry.column_named(column, heading.label(column))
-        if said_of is None:
-            continue
+    plans: dict[int, Plan] = {}
+    labels = {column: heading.label(column) for column in heading.texts}
+    for said_of in entry.columns if entry else ():
+        headed = [c for c, label in labels.items() if said_of.header and same_header(label, said_of.header)]
+        if said_of.column and (not said_of.header or said_of.column in headed):
+            headed = [said_of.column]
+        if not headed:
+            source.remark(
+                -1,
+                f"fleet.toml speaks of a column '{said_of.header or said_of.column}', which the sheet does not have",
+                "headers as they stand on the sheet",
+                "Correct the header in fleet.toml.",
+            )
         combined = said_of.quantity if said_of.quantity in combined_readings() else ""
-        plans[column] = Plan(
-            column,
-            heading.label(column),
-            "" if combined else said_of.quantity,
-            combined,
-            said_of.unit,
-            how=MAPPED if said_of.quantity else UNREAD,
-        )
+        for column in headed:
+            found = verdict.matches.get(column)
+            plans[column] = Plan(
+                column,
+                labels.get(column, ""),
+                "" if combined else said_of.quantity,
+                combined,
+                said_of.unit,
+                found.group if found else "",
+                MAPPED if said_of.quantity else UNREAD,
+            )
     return plans
 
 

@@ -30,6 +30,7 @@ relay = "R-101"                 # relay of the whole sheet
 
 from __future__ import annotations
 
+import difflib
 import tomllib
 from collections.abc import Mapping
 from dataclasses import dataclass, field
@@ -41,8 +42,8 @@ from audit.fleet.fleet import Complaint
 from audit.intake.gathered import TABLES, CannotRead
 from audit.intake.recognition.dictionary import combined_readings
 from audit.intake.recognition.folding import fold_header
-from audit.vocabulary.quantities import vocabulary
-from audit.vocabulary.spellings import UnitReading, read_unit
+from audit.vocabulary.quantities import Quantity, vocabulary
+from audit.vocabulary.spellings import UnitReading, dimensions_for, read_unit, spellings
 
 NAME = "fleet.toml"
 CODES = ("NFPA 70", "IEC")
@@ -108,13 +109,18 @@ class MappedSheet:
     relay: str = ""
     columns: tuple[MappedColumn, ...] = ()
 
-    def column_named(self, column: int, header: str) -> MappedColumn | None:
-        """Give what is said about a column, found by letter or header."""
-        folded = fold_header(header)
-        for entry in self.columns:
-            if entry.column == column or (entry.header and fold_header(entry.header) == folded):
-                return entry
-        return None
+    def setting_named(self, header: str) -> MappedColumn | None:
+        """Give what is said about a setting that is named beside its value."""
+        return next((entry for entry in self.columns if same_header(entry.header, header)), None)
+
+
+def same_header(one: str, other: str) -> bool:
+    """Tell whether two headers are the same but for case, spaces, dots and line breaks.
+
+    >>> same_header("Full Load\\nAmps", "full load amps")
+    True
+    """
+    return bool(one) and fold_header(one) == fold_header(other)
 
 
 @dataclass(frozen=True)
@@ -203,7 +209,7 @@ def _column(entry: Mapping[str, Any], where: str) -> MappedColumn:
     unit = None
     if name and (unit_text or base):
         quantity = known[combined_readings()[name].quantities[0] if name in combined_readings() else name]
-        unit = read_unit(unit_text, quantity) if unit_text else UnitReading("x")
+        unit = _unit(unit_text, quantity) if unit_text else UnitReading("x")
         if unit is None:
             raise _wrong(f"{where}: unit = {unit_text!r}", f"a unit of {quantity.label}")
         unit = UnitReading(unit.unit, base or unit.base)
@@ -214,9 +220,15 @@ def _column(entry: Mapping[str, Any], where: str) -> MappedColumn:
     return MappedColumn(entry.get("header", ""), column, name, unit)
 
 
-def _nearest(name: str) -> str:
-    import difflib
+def _unit(text: str, quantity: Quantity) -> UnitReading | None:
+    """Read a unit as sites spell it, or by the name that a saved map gives it."""
+    known = spellings().dimensions
+    if any(text in known[dimension].units for dimension in dimensions_for(quantity)):
+        return UnitReading(text)
+    return read_unit(text, quantity)
 
+
+def _nearest(name: str) -> str:
     near = difflib.get_close_matches(name, vocabulary().quantities, n=1)
     return f"Did you mean '{near[0]}'?" if near else ""
 

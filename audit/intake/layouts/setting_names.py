@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from functools import lru_cache
 
 import numpy as np
@@ -24,9 +24,10 @@ from audit.intake.recognition.matching import (
     match_header,
     near_miss,
 )
-from audit.intake.recognition.plans import ASKED, SYNONYM, UNREAD, is_level, part_by_cells
+from audit.intake.recognition.plans import ASKED, MAPPED, SYNONYM, UNREAD, is_level, part_by_cells
 from audit.intake.recognition.settings_grammar import read_part, setting_named
 from audit.intake.recognition.sheets import Sheet
+from audit.intake.sitemap import MappedColumn
 from audit.vocabulary.quantities import Quantity, vocabulary
 from audit.vocabulary.spellings import UnitReading, read_unit
 
@@ -123,6 +124,9 @@ class NamedSettings:
         return count
 
     def _read_one(self, label: str, match: HeaderMatch, values: _Values) -> bool:
+        mapped = self.sheet.mapped.setting_named(label) if self.sheet.mapped else None
+        if mapped is not None:
+            return self._as_mapped(label, mapped, values)
         quantity_name, how = match.quantity, SYNONYM
         units = {unit for unit in values.units if unit}
         if match.open_part:
@@ -135,7 +139,10 @@ class NamedSettings:
             )
             quantity_name, how = settled or "", SYNONYM if settled else ASKED if settled is None else UNREAD
         elif match.candidates and not match.known:
-            quantity_name, how = self._by_unit(match, units)
+            # a name beside a value that could be a tag or a service is no setting
+            settings = tuple(name for name in match.candidates if vocabulary().quantities[name].subject == "relay")
+            match = replace(match, candidates=settings)
+            quantity_name, how = self._by_unit(match, units) if settings else ("", UNREAD)
         if how == ASKED:
             self._ask(label, match, values)
         if not match.combined and not quantity_name:
@@ -143,6 +150,16 @@ class NamedSettings:
             self._note(label, values, "", None, f"proposed: {near}" if near else how if how == ASKED else UNREAD)
             return False
         self._emit(label, match, quantity_name, values)
+        return True
+
+    def _as_mapped(self, label: str, mapped: MappedColumn, values: _Values) -> bool:
+        """Read a setting as the site map has it."""
+        if not mapped.quantity:
+            self._note(label, values, "", None, UNREAD)
+            return False
+        combined = mapped.quantity if mapped.quantity in combined_readings() else ""
+        match = HeaderMatch("" if combined else mapped.quantity, combined, unit=mapped.unit)
+        self._emit(label, match, match.quantity, values, MAPPED)
         return True
 
     def _by_unit(self, match: HeaderMatch, units: set[str]) -> tuple[str, str]:
@@ -169,7 +186,7 @@ class NamedSettings:
             answers,
         )
 
-    def _emit(self, label: str, match: HeaderMatch, quantity_name: str, values: _Values) -> None:
+    def _emit(self, label: str, match: HeaderMatch, quantity_name: str, values: _Values, how: str = SYNONYM) -> None:
         known = vocabulary().quantities
         name = match.combined or quantity_name
         quantity = known[combined_readings()[name].quantities[0]] if match.combined else known[name]
@@ -185,7 +202,7 @@ class NamedSettings:
         for block in made:
             self.sheet.keep(block, "relay", label)
         unit = next((u for u in units if isinstance(u, UnitReading)), None)
-        self._note(label, values, name, unit, SYNONYM)
+        self._note(label, values, name, unit, how)
 
     def _unit(
         self, text: str, stated: UnitReading | None, quantity: Quantity, values: _Values, place: int

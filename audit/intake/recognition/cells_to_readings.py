@@ -34,7 +34,7 @@ from audit.intake.recognition.blocks import (
     filled,
     objects,
 )
-from audit.vocabulary.quantities import Quantity
+from audit.vocabulary.quantities import Quantity, fold_choice
 from audit.vocabulary.spellings import UnitReading, read_unit
 
 NO_UNIT = UnitReading("")
@@ -53,6 +53,7 @@ class Source:
     decimal_comma: bool | None = None
     stand_ins: frozenset[float] = frozenset()
     zero_means_off: bool | None = None
+    day_first: bool | None = None
     complaints: list[Complaint] = field(default_factory=list)
     questions: list[Question] = field(default_factory=list)
 
@@ -321,15 +322,13 @@ def _texts(quantity: Quantity, cells: Cells, source: Source) -> Readings:
 
 
 def _is_spelled(text: str, spelled: object) -> bool:
-    from audit.vocabulary.quantities import fold_choice
-
     return isinstance(spelled, dict) and fold_choice(text) in spelled
 
 
 def _dates(quantity: Quantity, cells: Cells, source: Source) -> Readings:
     made = _blank(quantity, cells)
     bad: list[tuple[int, str, str]] = []
-    for index, reading in enumerate(read_date_cells(cells.values)):
+    for index, reading in enumerate(read_date_cells(cells.values, day_first=source.day_first)):
         kind = reading.kind
         if kind is CellKind.DATE and reading.moment is not None:
             made.state[index] = VALUE

@@ -133,6 +133,9 @@ def _level(grid: SheetGrid, row: int, last_row: int) -> tuple[dict[int, str], di
     spread = dict.fromkeys(texts, False)
     if row == last_row:
         return texts, spread
+    if len(set(texts.values())) < 2:
+        # one text above all columns is the title of the sheet
+        return {}, {}
     merges = [area for area in grid.merged if area[0] <= row <= area[2] and area[3] > area[1]]
     if merges:
         for top, left, _bottom, right in merges:

@@ -18,6 +18,7 @@ _NOTE = re.compile(
     r"|[*†‡].*|\(?\d{1,2}[.)]\s+\D.*",
     re.IGNORECASE | re.DOTALL,
 )
+_EXAMPLE = re.compile(r"example\b.*", re.IGNORECASE)
 _AREA = re.compile(
     r"(?:area|unit|section|plant|building|train|mcc|swgr|switchgear|system|dept|department|bus)\b.*", re.IGNORECASE
 )
@@ -91,6 +92,9 @@ def kinds_of_rows(
                 kinds.headings.append(row)
                 area = (row, present[0] + 1)
                 continue
+        if _EXAMPLE.fullmatch(cell_text(values[key - 1])):
+            kinds.notes.append(row)
+            continue
         if same_heading(grid, row, heading):
             kinds.repeated.append(row)
             continue

@@ -13,7 +13,8 @@ from audit.intake.celltext import cell_text
 from audit.intake.gathered import ColumnReading
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.blocks import Integers, Readings, filled, objects
-from audit.intake.recognition.cells_to_readings import Cells, Source
+from audit.intake.recognition.cells_to_readings import Cells, Source, name_of_cell
+from audit.intake.sitemap import MappedSheet
 from audit.vocabulary.spellings import UnitReading
 
 
@@ -40,7 +41,7 @@ class Sheet:
     records: Records
     readings: list[Readings] = field(default_factory=list)
     columns: list[ColumnReading] = field(default_factory=list)
-    day_first: bool | None = None
+    mapped: MappedSheet | None = None
 
     def address(self, row: int, column: int) -> int:
         """Pack the address of one cell."""
@@ -83,8 +84,6 @@ class Sheet:
         how: str,
     ) -> None:
         """Note how a column was understood."""
-        from audit.intake.recognition.cells_to_readings import name_of_cell
-
         self.columns.append(
             ColumnReading(
                 self.source.file,
