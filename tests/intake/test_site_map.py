@@ -140,7 +140,7 @@ def test_a_sheet_is_left_unread_at_the_site_s_word(site):
     ],
 )
 def test_a_wrong_map_is_refused_with_what_to_do(site, text, message):
-    with pytest.raises(CannotRead, match="fleet.toml") as refusal:
+    with pytest.raises(CannotRead, match=r"fleet\.toml") as refusal:
         write(site, text)
     assert message in str(refusal.value)
 

@@ -10,7 +10,8 @@ import numpy as np
 
 from audit.fleet.addresses import pack
 from audit.intake.cells import CellValue
-from audit.intake.celltext import cell_text
+from audit.intake.celltext import cell_text, find_decimal_comma
+from audit.intake.celltext.characters import plain
 from audit.intake.recognition.blocks import objects
 from audit.intake.recognition.cells_to_readings import ADVICE, Cells, read_cells
 from audit.intake.recognition.combined import read_combined, read_ratio
@@ -116,12 +117,19 @@ class NamedSettings:
 
     def read(self) -> int:
         """Read everything; give how many quantities were recognised."""
+        self._find_decimal_mark()
         count = 0
         for (function, name), values in self.found.items():
             match = match_setting(function, name)
             label = " / ".join(text for text in (function, name) if text)
             count += self._read_one(label, match, values)
         return count
+
+    def _find_decimal_mark(self) -> None:
+        """Let all values of the sheet tell the decimal mark: each name has few values of its own."""
+        if self.sheet.source.decimal_comma is None:
+            texts = (v for values in self.found.values() for v in values.values if isinstance(v, str))
+            self.sheet.source.decimal_comma = find_decimal_comma(map(plain, texts))
 
     def _read_one(self, label: str, match: HeaderMatch, values: _Values) -> bool:
         mapped = self.sheet.mapped.setting_named(label) if self.sheet.mapped else None

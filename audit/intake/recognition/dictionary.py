@@ -14,7 +14,7 @@ from audit.vocabulary.quantities import Quantity, vocabulary
 TABLES = ("motor", "relay", "bus", "start")
 SHORTEST_COMPACT = 5
 _BUS_WORDS = frozenset({"bus", "system", "fault", "busbar", "incomer", "base", "x/r", "nominal"})
-_RELAY_WORDS = frozenset({"relay", "ied", "group", "export"})
+_RELAY_WORDS = frozenset({"relay", "ied", "group", "export", "set", "setting"})
 
 
 @dataclass(frozen=True, slots=True)
