@@ -8,6 +8,7 @@ from pathlib import Path
 from typing import Any
 
 from audit.checks.entry import Check, Requirement, read_entry
+from audit.checks.wording import limit_in_words
 from audit.derivation.functions import FUNCTIONS
 from audit.derivation.recipes import Recipe, check_recipes, lookup_for, read_recipes
 from audit.derivation.register_facts import REGISTER_FACTS
@@ -50,6 +51,17 @@ class Catalogue:
     def packs(self) -> tuple[str, ...]:
         """Give the names of the packs, core first."""
         return tuple(dict.fromkeys((CORE, *(check.pack for check in self.checks))))
+
+    def label_of(self, name: str) -> str:
+        """Give what a name reads as: a limit's value, a quantity's label, or the word of a choice."""
+        if name in self.limits:
+            return limit_in_words(self.limits[name])
+        quantity = self.quantities.get(name)
+        return quantity.label if quantity else name.replace("_", " ")
+
+    def reads(self, function: str) -> str:
+        """Give how a function reads."""
+        return self.functions[function].reads or function.replace("_", " ")
 
     def names_beneath(self, check: Check) -> set[str]:
         """Give every quantity and limit that a check rests on, through all recipes."""

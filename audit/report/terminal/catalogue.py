@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
 from itertools import groupby
 
 from rich.console import Console
@@ -13,7 +12,7 @@ from rich.text import Text
 from audit.checks.cases import CaseResult
 from audit.checks.catalogue import Catalogue
 from audit.checks.entry import Check
-from audit.checks.wording import limit_in_words, requirement_in_words
+from audit.checks.wording import requirement_in_words
 from audit.expression.text import render
 from audit.report.terminal.style import counted, severity_word
 
@@ -44,15 +43,15 @@ def print_check(check: Check, catalogue: Catalogue, console: Console) -> None:
         ("says", check.says),
         ("severity because", check.severity_because),
         ("subject", f"{check.subject}; pack {check.pack}; declared in {check.file}"),
-        ("applies when", render(check.when, _label(catalogue), _reads(catalogue))),
-        *(("wanted", requirement_in_words(r, _label(catalogue), _reads(catalogue))) for r in check.requirements),
+        ("applies when", render(check.when, catalogue.label_of, catalogue.reads)),
+        *(("wanted", requirement_in_words(r, catalogue.label_of, catalogue.reads)) for r in check.requirements),
         ("why", check.why),
         ("blind spots", check.blind_spots),
         ("remedy", check.remedy),
         ("source", check.source),
     ]
     if check.evidence:
-        lines.append(("evidence", f"judged only where given: {', '.join(map(_label(catalogue), check.evidence))}"))
+        lines.append(("evidence", f"judged only where given: {', '.join(map(catalogue.label_of, check.evidence))}"))
     table = Table(box=None, pad_edge=False, show_header=False)
     table.add_column(style="italic", no_wrap=True)
     table.add_column(overflow="fold")
@@ -61,21 +60,6 @@ def print_check(check: Check, catalogue: Catalogue, console: Console) -> None:
     console.print(Padding(table, (0, 0, 1, 2)))
     for case in check.cases:
         console.print(Padding(Text(f"worked case, {case.gives}: {case.working}"), (0, 0, 0, 2)))
-
-
-def _label(catalogue: Catalogue) -> Callable[[str], str]:
-    def label(name: str) -> str:
-        limit = catalogue.limits.get(name)
-        if limit is not None:
-            return limit_in_words(limit)
-        quantity = catalogue.quantities.get(name)
-        return quantity.label if quantity else name.replace("_", " ")
-
-    return label
-
-
-def _reads(catalogue: Catalogue) -> Callable[[str], str]:
-    return lambda function: catalogue.functions[function].reads or function.replace("_", " ")
 
 
 def print_verification(results: list[CaseResult], console: Console) -> None:
