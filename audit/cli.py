@@ -77,6 +77,27 @@ def explain(
 
 
 @app.command()
+def columns(
+    fleet: FleetPath,
+    save: Annotated[
+        bool, typer.Option("--save", help="Write fleet.toml beside the workbooks, to be corrected.")
+    ] = False,
+) -> None:
+    """Print how every column of the workbooks was understood, and what was left unread."""
+    from audit.commands.columns import run_columns
+
+    raise typer.Exit(run_columns(fleet, save=save))
+
+
+@app.command()
+def blank(folder: Annotated[Path, typer.Argument(metavar="DIR", help="Where to write it.")]) -> None:
+    """Write an empty intake workbook with notes, units, drop-downs and one example row."""
+    from audit.commands.blank import run_blank
+
+    raise typer.Exit(run_blank(folder))
+
+
+@app.command()
 def checks(
     name: Annotated[str | None, typer.Argument(metavar="NAME", help="One check in full.")] = None,
     verify: Annotated[bool, typer.Option("--verify", help="Run every worked case.")] = False,

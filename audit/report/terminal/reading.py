@@ -1,0 +1,43 @@
+"""How the workbooks were understood, on the terminal: every column, its quantity, a sample value."""
+
+from __future__ import annotations
+
+from itertools import groupby
+
+from rich.console import Console
+from rich.table import Table
+from rich.text import Text
+
+from audit.intake.gathered import Gathered
+from audit.report.terminal.style import counted
+from audit.vocabulary.quantities import vocabulary
+
+
+def print_reading(gathered: Gathered, console: Console) -> None:
+    """Print every column of every sheet as it was read."""
+    known = vocabulary().quantities
+    for (file, sheet), columns in groupby(gathered.columns, key=lambda column: (column.file, column.sheet)):
+        console.print()
+        as_read = next((s for s in gathered.sheets if s.file == file and s.sheet == sheet), None)
+        kind = (
+            f" · {as_read.table} list, layout {as_read.layout}, headers in row {as_read.header_row}" if as_read else ""
+        )
+        console.rule(Text(f"{file} › {sheet}{kind}", "bold"), align="left", style="default")
+        table = Table(box=None, pad_edge=False, header_style="italic")
+        for heading in ("cell", "header", "read as", "unit or base", "for instance", "how"):
+            table.add_column(heading, overflow="fold")
+        for column in columns:
+            quantity = known.get(column.quantity)
+            read_as = f"{quantity.label} ({column.quantity})" if quantity else "unread"
+            unit = " ".join(part for part in (column.unit, column.base) if part)
+            cells = (column.cell, column.header, read_as, unit, column.sample, column.how)
+            table.add_row(*[Text(cell) for cell in cells])
+        console.print(table)
+    unread = sum(not column.quantity for column in gathered.columns)
+    console.print()
+    console.print(
+        f"{counted(len(gathered.columns), 'column')}, {unread} unread, {counted(len(gathered.questions), 'question')}"
+    )
+    for question in gathered.questions:
+        place = " › ".join(part for part in (question.file, question.sheet, question.cell) if part)
+        console.print(Text(f"asked: {place}: {question.about} {question.ask}"))
