@@ -27,8 +27,8 @@ def print_reading(gathered: Gathered, console: Console) -> None:
         for heading in ("cell", "header", "read as", "unit or base", "for instance", "how"):
             table.add_column(heading, overflow="fold")
         for column in columns:
-            quantity = known.get(column.quantity)
-            read_as = f"{quantity.label} ({column.quantity})" if quantity else "unread"
+            labels = [known[name].label for name in column.quantity.split(", ") if name in known]
+            read_as = f"{'; '.join(labels)} ({column.quantity})" if labels else column.quantity or "unread"
             unit = " ".join(part for part in (column.unit, column.base) if part)
             cells = (column.cell, column.header, read_as, unit, column.sample, column.how)
             table.add_row(*[Text(cell) for cell in cells])
