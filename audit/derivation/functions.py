@@ -37,6 +37,7 @@ from audit.engineering import (
     rated_point,
     reduced_voltage,
     stall,
+    standard_sizes,
     start_current,
     start_limits,
     start_voltage,
@@ -101,6 +102,7 @@ _MODULES: tuple[tuple[ModuleType, tuple[str, ...]], ...] = (
     ),
     (reduced_voltage, ("star_delta_start_current_a", "autotransformer_line_current_a")),
     (stall, ("stall_time_at_current_s", "stall_time_at_voltage_s")),
+    (standard_sizes, ("next_standard_fuse_a",)),
     (
         start_current,
         ("start_current_at_voltage_a", "start_current_at_rated_a", "locked_rotor_from_multiple_a"),
