@@ -52,20 +52,22 @@ def add_family(site: Site, family: Family, random: np.random.Generator) -> None:
     members = []
     for tag in family.tags:
         motor: Record = {"motor": tag, **common}
-        length = near(float(random.uniform(*family.length_m)), 5.0)
-        _device(motor, machine, family, bus, length)
+        _device(motor, machine, family, bus, near(float(random.uniform(*family.length_m)), 5.0))
         members.append(motor)
-    site.motors.extend(members)
     records = [_starts(motor, machine, family, bus, inertia, random) for motor in members]
-    for motor, started in zip(members, records, strict=True):
-        site.starts.extend(started)
+    started = [start for each in records for start in each]
+    relays = []
+    for motor in members:
         if family.layout:
             exported = date(2026, 9, 7) if voltage > 1000 else date(2026, 3, 16)
             relay = new_relay(motor, family.layout, RELAY_TYPES[family.layout], exported)
-            set_motor_relay(relay, motor, bus, members, [start for each in records for start in each])
-            site.relays.append(relay)
+            set_motor_relay(relay, motor, bus, members, started)
+            relays.append(relay)
         elif family.overload_device in ("overload_relay", "motor_protective_breaker"):
             motor |= switchgear.overload_relay(family.overload_device, motor)
+    site.motors.extend(members)
+    site.relays.extend(relays)
+    site.starts.extend(started)
 
 
 def _start_times(machine: Machine, inertia: float, family: Family) -> tuple[float, float]:
@@ -146,13 +148,15 @@ def _device(motor: Record, machine: Machine, family: Family, bus: Record, length
     high_voltage = machine.voltage_v > 1000
     current, locked = machine.full_load_a, machine.locked_rotor_a
     direct = family.starting_method == "direct_on_line"
+    across_the_line = direct or (family.starting_method == "soft_starter" and bool(motor.get("bypass_start_possible")))
     must_see = 0.0
+    slowest = number(motor, "stated_start_time_at_lowest_voltage_s") if family.starting_method != "drive" else 0.0
     match family.switching_device:
         case "breaker":
             motor |= switchgear.breaker(high_voltage, current)
             must_see = 2.1 * 1.8 * locked
         case "fused_contactor":
-            motor |= switchgear.contactor_with_fuses(high_voltage, current, locked, direct)
+            motor |= switchgear.contactor_with_fuses(high_voltage, current, locked, slowest)
             must_see = 10 * number(motor, "fuse_rating_a")
             motor["fuse_melting_curve"] = melting_curve(number(motor, "fuse_rating_a"))
             motor["fuse_clearing_curve"] = clearing_curve(number(motor, "fuse_rating_a"))
@@ -172,7 +176,7 @@ def _device(motor: Record, machine: Machine, family: Family, bus: Record, length
         else ((number(bus, "fault_max_ka") * 1e3) ** 2 * 0.2)
     )
     motor |= cables.choose_cable(
-        cables.Feeder(bus, current, locked, machine.voltage_v, length_m, duty, must_see, direct)
+        cables.Feeder(bus, current, locked, machine.voltage_v, length_m, duty, must_see, across_the_line)
     )
     if family.layout:
         motor["relay"] = f"R-{str(motor['motor']).replace('-', '')}"

@@ -75,7 +75,7 @@ def as_written(value: float, written: Written, relay: Record, motor: Record) -> 
 
 
 _COMMON = {
-    "relay_full_load_a": Written("Motor FLA", "A", 1.0),
+    "relay_full_load_a": Written("Motor FLA", "A", 0.1),
     "relay_frequency_hz": Written("Frequency", "Hz"),
     "short_circuit_trip_delay_s": Written("50 Delay", "ms", 10.0),
     "thermal_pickup_a": Written("49 Pickup", "x FLA", 0.01),

@@ -135,7 +135,8 @@ def _trip_class(motor: Record, locked: float, greatest: float, slowest_s: float)
     """Least class (IEC 60947-4-1, 7.2 times) whose hot lower edge lets the start through, inside both stall times."""
     hot, cold = number(motor, "safe_stall_hot_s"), number(motor, "safe_stall_cold_s")
     for trip_class, lower_s in ((10.0, 4.0), (20.0, 6.0), (30.0, 9.0)):
-        rides = lower_s * (7.2 / greatest) ** 2 * hot / cold >= 1.15 * slowest_s
+        shortest_s = lower_s * (7.2 / greatest) ** 2
+        rides = shortest_s * hot / cold >= 1.15 * slowest_s and shortest_s >= 2.1 * number(motor, "stated_start_time_s")
         stops = trip_class * (7.2 / locked) ** 2 <= 0.92 * cold
         if rides and stops:
             return trip_class
@@ -176,6 +177,8 @@ def _jam(setter: Setter, slowest_s: float) -> None:
     multiple = 2.0
     if number(motor, "rated_voltage_v") > 1000 or motor.get("driven_machine") != "crusher":
         multiple = JAM_MULTIPLES.get(str(motor.get("driven_machine")), 2.0)
+    if "relay_jam_multiple" in motor:
+        multiple = number(motor, "relay_jam_multiple")
     if setter.turn("jam", motor.get("driven_machine") in JAMMING_MACHINES or bool(motor.get("relay_jam"))):
         setter.put("jam_trip_pickup_a", multiple * number(motor, "full_load_a"))
         setter.put("jam_trip_delay_s", 3.0 if motor["driven_machine"] == "crusher" else 2.0)
@@ -207,18 +210,17 @@ def _earth_fault(setter: Setter, bus: Record, greatest_a: float) -> None:
         if kind == "core_balance":
             setter.put("earth_fault_trip_pickup_a", 0.07 * number(bus, "earth_fault_min_a"))
         else:
-            setter.put(
-                "earth_fault_trip_pickup_a", max(0.04 * greatest_a, 0.1 * number(bus, "earth_fault_min_a")), "up"
-            )
+            residual = max(0.04 * greatest_a, 0.2 * number(motor, "ct_primary_a"))
+            setter.put("earth_fault_trip_pickup_a", min(residual, 0.15 * number(bus, "earth_fault_min_a")), "up")
         setter.put("earth_fault_trip_delay_s", 0.1 if kind == "core_balance" else 0.2)
     elif bus["earthing"] == "high_resistance":
         setter.put("earth_fault_trip_pickup_a", 0.3 * number(bus, "earth_fault_min_a"))
         setter.put("earth_fault_trip_delay_s", 0.5)
     elif kind == "core_balance":
-        setter.put("earth_fault_trip_pickup_a", max(10.0, 0.12 * number(motor, "full_load_a")), "down")
+        setter.put("earth_fault_trip_pickup_a", max(10.0, 0.175 * number(motor, "full_load_a")), "down")
         setter.put("earth_fault_trip_delay_s", 0.2)
     else:
-        setter.put("earth_fault_trip_pickup_a", max(0.3 * number(motor, "full_load_a"), 0.03 * greatest_a))
+        setter.put("earth_fault_trip_pickup_a", max(0.21 * number(motor, "full_load_a"), 0.03 * greatest_a))
         setter.put("earth_fault_trip_delay_s", 0.25)
 
 

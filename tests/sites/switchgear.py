@@ -23,12 +23,13 @@ def breaker(high_voltage: bool, full_load_a: float) -> Record:
     }
 
 
-def contactor_with_fuses(high_voltage: bool, full_load_a: float, locked_rotor_a: float, direct: bool) -> Record:
+def contactor_with_fuses(high_voltage: bool, full_load_a: float, locked_rotor_a: float, slowest_s: float) -> Record:
     """Fused contactor: the fuse carries the start and takes every short circuit."""
     wanted = 1.6 * full_load_a if high_voltage else 1.2 * full_load_a
-    fuse = next_up(FUSES_A, max(wanted, locked_rotor_a / 6.5 if direct else 0.0))
-    # the contactor must break what the fuse leaves to it, up to 17 times full load; it breaks 12 times its rating
-    rated = 400.0 if high_voltage else next_up(CONTACTORS_A, max(1.5 * full_load_a, locked_rotor_a / 8))
+    # the fuse must not melt before the relay has tripped on a stall, in 15 s or (long starts) in 30 s
+    fuse = next_up(FUSES_A, max(wanted, locked_rotor_a / (6.0 if slowest_s < 3.0 else 4.8)))
+    # the contactor, which breaks 12 times its rating, must break what the fuse leaves to it: up to 3.8 times the start
+    rated = 400.0 if high_voltage else next_up(CONTACTORS_A, 3.8 * locked_rotor_a / 12)
     return {
         "interrupting_rating_ka": 4.5 if high_voltage else near(12 * rated / 1000, 0.01),
         "device_rated_current_a": rated,

@@ -12,6 +12,7 @@ STEERING = (
     "relay_trips_on_winding",
     "relay_backup_51",
     "relay_hot_curve",
+    "relay_jam_multiple",
 )
 """Entries of a motor's record that steer the choice of settings and stand in no workbook."""
 OF_OVERLOAD_RELAY = (
