@@ -20,6 +20,7 @@ from audit.intake.recognition.cells_to_readings import Source
 from audit.intake.recognition.dictionary import combined_readings
 from audit.intake.recognition.header_rows import Heading, find_heading, heading_at
 from audit.intake.recognition.plans import MAPPED, UNREAD, Plan
+from audit.intake.recognition.decimal_mark import decimal_mark
 from audit.intake.recognition.row_kinds import rows_in_words
 from audit.intake.recognition.sheets import Records, Sheet, said
 from audit.intake.recognition.tables import Verdict, table_of
@@ -214,7 +215,7 @@ def _read(candidate: _Candidate, run: _Run) -> None:
     source = Source(
         candidate.file,
         grid.name,
-        grid.decimal_comma,
+        grid.decimal_comma if grid.decimal_comma is not None else decimal_mark(grid),
         run.map.stand_ins,
         run.map.zero_means_off,
         run.map.day_first,

@@ -13,8 +13,7 @@ from audit.intake.cells import CellValue
 from audit.intake.celltext import cell_text, find_decimal_comma
 from audit.intake.celltext.characters import plain
 from audit.intake.recognition.blocks import objects
-from audit.intake.recognition.cells_to_readings import ADVICE, Cells, read_cells
-from audit.intake.recognition.combined import read_combined, read_ratio
+from audit.intake.recognition.cells_to_readings import ADVICE, Cells
 from audit.intake.recognition.dictionary import combined_readings
 from audit.intake.recognition.folding import fold_header
 from audit.intake.recognition.header_units import split_units
@@ -26,6 +25,7 @@ from audit.intake.recognition.matching import (
     near_miss,
 )
 from audit.intake.recognition.plans import ASKED, MAPPED, SYNONYM, UNREAD, is_level, part_by_cells
+from audit.intake.recognition.quantity_columns import read_named
 from audit.intake.recognition.settings_grammar import read_part, setting_named
 from audit.intake.recognition.sheets import Sheet
 from audit.intake.sitemap import MappedColumn
@@ -201,12 +201,7 @@ class NamedSettings:
         units = [self._unit(text, match.unit, quantity, values, place) for place, text in enumerate(values.units)]
         kept = [place for place, unit in enumerate(units) if not isinstance(unit, str)]
         cells = self._cells(label, match, values, kept, [u for u in units if not isinstance(u, str)])
-        if match.combined:
-            made = read_combined(match.combined, cells, self.sheet.source)
-        elif "_primary_" in name and name.replace("_primary_", "_secondary_") in known:
-            made = read_ratio(quantity, cells, self.sheet.source)
-        else:
-            made = [read_cells(quantity, cells, self.sheet.source)]
+        made = read_named(name, cells, self.sheet.source)
         for block in made:
             self.sheet.keep(block, "relay", label)
         unit = next((u for u in units if isinstance(u, UnitReading)), None)

@@ -10,15 +10,13 @@ import numpy as np
 from audit.intake.cells import CellValue
 from audit.intake.celltext import cell_text
 from audit.intake.recognition.blocks import VALUE, Integers, Readings, objects
-from audit.intake.recognition.cells_to_readings import read_cells
-from audit.intake.recognition.combined import read_combined, read_ratio
 from audit.intake.recognition.header_rows import Heading
 from audit.intake.recognition.matching import HeaderMatch
 from audit.intake.recognition.plans import Plan, Planner
+from audit.intake.recognition.quantity_columns import read_named
 from audit.intake.recognition.row_kinds import RowKinds, kinds_of_rows, rows_in_words
 from audit.intake.recognition.sheets import Sheet, said
 from audit.intake.recognition.tags import tags_in
-from audit.vocabulary.quantities import vocabulary
 
 KEYS = {"motor": ("motor",), "relay": ("relay_tag", "motor"), "bus": ("bus_name",), "start": ("start_motor",)}
 _KEY_NAMES = frozenset({"motor", "relay_tag", "bus_name", "start_motor", "relay"})
@@ -72,12 +70,7 @@ def _column(sheet: Sheet, kinds: RowKinds, record: Integers, plan: Plan, key: Pl
     rows = kinds.key_rows if plan.column == key.column else kinds.records
     cells = sheet.cells(plan.column, rows, record, plan.unit, plan.header)
     cells.group = plan.group
-    if plan.combined:
-        return read_combined(plan.combined, cells, sheet.source)
-    quantity = vocabulary().quantities[plan.quantity]
-    if quantity.name.replace("_primary_", "_secondary_") in vocabulary().quantities and "_primary_" in quantity.name:
-        return read_ratio(quantity, cells, sheet.source)
-    return [read_cells(quantity, cells, sheet.source)]
+    return read_named(plan.name, cells, sheet.source)
 
 
 def _say_rows(sheet: Sheet, kinds: RowKinds, key: Plan) -> None:

@@ -35,7 +35,7 @@ from audit.intake.recognition.blocks import (
     objects,
 )
 from audit.vocabulary.quantities import Quantity, fold_choice
-from audit.vocabulary.spellings import UnitReading, read_unit
+from audit.vocabulary.spellings import UnitReading, conversion, read_unit
 
 NO_UNIT = UnitReading("")
 EPOCH = datetime(1970, 1, 1)
@@ -245,6 +245,20 @@ def _odd(
     if kind is CellKind.TO_BE_CONFIRMED:
         made.state[index] = PENDING
         return None
+    if kind is CellKind.AMBIGUOUS:
+        settled = _plausible_one(reading, _stated(cells, index), quantity)
+        if settled is not None:
+            made.state[index], made.number[index] = VALUE, settled
+            made.unit[index] = reading.unit_text or made.unit[index]
+            others = " or ".join(f"{number:.15g}" for number in reading.numbers if number != settled)
+            source.remark(
+                int(cells.address[index]),
+                f"'{reading.text}' read as {settled:.15g}: {others} is out of the question for {quantity.label}",
+                "one decimal mark",
+                "",
+                quantity.name,
+            )
+            return None
     if kind is CellKind.INSTANTANEOUS and (quantity.part or "").endswith("delay"):
         made.state[index] = VALUE
         made.number[index] = 0.0
@@ -252,6 +266,20 @@ def _odd(
         return None
     remark = reading.remark or f"'{reading.text}' is not a number"
     return remark if reading.text and reading.text in remark else f"'{reading.text}': {remark}", expected
+
+
+def _plausible_one(reading: CellReading, stated: UnitReading | None, quantity: Quantity) -> float | None:
+    """Give the one meaning of a text that lies within the plausible range, or None where several or none do."""
+    unit = unit_of(reading.unit_text, stated, quantity)
+    if unit is None or unit.base or quantity.plausible is None or len(reading.numbers) != 2:
+        return None
+    converted = conversion(unit.unit, quantity) if unit.unit else (1.0, 0.0)
+    if converted is None or unit.unit in ("x", "cycles"):
+        return None
+    factor, offset = converted
+    low, high = quantity.plausible
+    fitting = [number for number in reading.numbers if low <= (number + offset) * factor <= high]
+    return fitting[0] if len(fitting) == 1 else None
 
 
 def _at_other_voltage(qualifier: str) -> bool:

@@ -117,6 +117,15 @@ def _parts(reading: CellReading, value: object) -> list[tuple[float, str, str]]:
     return []
 
 
+def holds_pair(text: str) -> bool:
+    """Tell whether a cell holds two values: '90/100', '3 cold 2 hot'.
+
+    >>> holds_pair("90/100"), holds_pair("2C/1H"), holds_pair("100")
+    (True, True, False)
+    """
+    return len(_parts(read_number_column([text]).reading(0), text)) == 2
+
+
 def _side(mark: str, combined: Combined) -> int | None:
     """Give which quantity a mark such as 'hot', 'C', 'trip' beside a value names."""
     word = mark.strip(" ()").casefold()

@@ -40,7 +40,17 @@ class Heading:
 
     def matches(self, table: str) -> dict[int, HeaderMatch]:
         """Give what each column means in a table."""
-        return {column: match_texts(texts, table) for column, texts in self.texts.items()}
+        return {column: self._match(column, table) for column in self.texts}
+
+    def _match(self, column: int, table: str) -> HeaderMatch:
+        texts = self.texts[column]
+        found = match_texts(texts, table)
+        unit = self.units.get(column)
+        if unit and not found.known and not found.open_part:
+            # 'LRT' above 's' is a time, above '%' a torque
+            with_unit = match_texts((*texts[:-1], f"{texts[-1]} ({unit})"), table)
+            return with_unit if with_unit.known else found
+        return found
 
 
 def find_heading(grid: SheetGrid, first_row: int = 1, last_row: int | None = None) -> Heading | None:
@@ -57,6 +67,9 @@ def find_heading(grid: SheetGrid, first_row: int = 1, last_row: int | None = Non
             if row + depth - 1 > grid.height or (not known.get(row + depth - 1) and depth > 1):
                 continue
             if depth == 1 and known[row] < FEWEST:
+                continue
+            if depth > 1 and _unit_row(grid, row + depth - 1, heading_texts(grid, row, depth - 1)):
+                # the last of these rows names units
                 continue
             texts = heading_texts(grid, row, depth)
             score = _score(texts)

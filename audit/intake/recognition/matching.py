@@ -251,7 +251,11 @@ def _sure(quantity: Quantity, words: str, unit_text: str, group: str) -> HeaderM
 
 
 def _unit(unit_text: str, words: str, quantity: Quantity) -> UnitReading | None:
-    return read_unit(unit_text, quantity) if unit_text else unit_in_words(words, quantity)
+    unit = read_unit(unit_text, quantity) if unit_text else unit_in_words(words, quantity)
+    if "gd2" in fold_header(words).split() and (unit is None or unit.unit == "kgm2"):
+        # GD2 is four times the moment of inertia, however its unit is spelled
+        return UnitReading("gd2")
+    return unit
 
 
 def _of_setting(element: str, part: str, folded: str, words: str, unit_text: str, group: str) -> HeaderMatch:

@@ -93,7 +93,10 @@ def _motor(matches: Mapping[str, Mapping[int, HeaderMatch]], settings_make_list:
     of_relays = bool(settings) or (relay_column and relay_column < tag)
     if of_relays:
         return verdict if len(own_facts) >= FEWEST_MOTOR_FACTS else None
-    return verdict if len(facts) >= FEWEST_MOTOR_FACTS or len(facts) + len(who) >= 3 else None
+    if len(facts) >= FEWEST_MOTOR_FACTS:
+        return verdict
+    # little is known of these rows: they must at least be headed as motors
+    return verdict if "motor" in names and facts and len(facts) + len(who) >= 3 else None
 
 
 def _start(matches: Mapping[int, HeaderMatch]) -> Verdict | None:
