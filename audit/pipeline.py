@@ -46,8 +46,12 @@ def _has_data(fleet: Fleet, catalogue: Catalogue, name: str) -> bool:
 
 def audit_fleet(fleet: Fleet, catalogue: Catalogue, *, audited_on: date, packs: Iterable[str] = ()) -> Audit:
     """Judge a fleet that was read."""
-    grouped = with_register_facts(with_groups(fleet))
-    scope = packs_in_scope(catalogue, fleet, packs)
+    return judge_fleet(with_register_facts(with_groups(fleet)), catalogue, audited_on=audited_on, packs=packs)
+
+
+def judge_fleet(grouped: Fleet, catalogue: Catalogue, *, audited_on: date, packs: Iterable[str] = ()) -> Audit:
+    """Judge a fleet that has its groups and the facts of its register."""
+    scope = packs_in_scope(catalogue, grouped, packs)
     checks = [check for check in catalogue.checks if check.pack in scope]
     workings = _workings(grouped, catalogue, audited_on)
     outcomes = _judged(checks, workings)

@@ -9,13 +9,14 @@ from typing import Any
 
 import numpy as np
 
+from audit.cautions import CAUTIONS
 from audit.checks.ranges import NO_CHECK
 from audit.findings.audit import Audit
 from audit.findings.finding import Finding
 from audit.findings.render import FindingRenderer
-from audit.cautions import CAUTIONS
 
-RECORD_VERSION = 1
+RECORD_VERSION = 2
+"""1: findings and readings. 2: the values of the fleet beside them, and since when each finding stands."""
 
 
 def tool_version() -> str:

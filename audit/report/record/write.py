@@ -1,4 +1,4 @@
-"""Write the record as a stream: findings.json, findings.csv, readings.csv.gz; the same inputs give the same bytes."""
+"""Write the record as a stream: findings, readings and values; the same inputs give the same bytes."""
 
 from __future__ import annotations
 
@@ -13,6 +13,7 @@ from typing import IO, Any
 from audit.findings.audit import Audit
 from audit.report.atomic import whole_file
 from audit.report.record import parts
+from audit.report.record.values import VALUES_FILE, write_values
 
 CSV_COLUMNS = (
     "severity", "status", "motor", "service", "bus", "cubicle", "relay", "subject", "name", "function", "check",
@@ -23,7 +24,7 @@ DANGEROUS_FIRST = ("=", "+", "-", "@", "\t", "\r")
 
 
 def write_record(audit: Audit, folder: Path) -> list[Path]:
-    """Write findings.json, findings.csv and readings.csv.gz into a folder."""
+    """Write findings.json, findings.csv, readings.csv.gz and values.jsonl.gz into a folder."""
     folder.mkdir(parents=True, exist_ok=True)
     record = folder / "findings.json"
     with whole_file(record) as stream:
@@ -34,12 +35,15 @@ def write_record(audit: Audit, folder: Path) -> list[Path]:
     readings = folder / "readings.csv.gz"
     with whole_file(readings, _gzip) as stream:
         audit.fleet.readings.to_csv(stream, index=False)
-    return [record, table, readings]
+    values = folder / VALUES_FILE
+    with whole_file(values, _gzip) as stream:
+        write_values(audit, stream)
+    return [record, table, readings, values]
 
 
 def _gzip(path: Path) -> IO[str]:
     # no file name and no time in the header, so that the same readings give the same bytes
-    raw = gzip.GzipFile(filename="", fileobj=path.open("wb"), mode="wb", mtime=0)
+    raw = gzip.GzipFile(filename="", fileobj=path.open("wb"), mode="wb", mtime=0, compresslevel=6)
     return io.TextIOWrapper(raw, encoding="utf-8", newline="")
 
 
