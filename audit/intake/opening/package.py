@@ -46,7 +46,7 @@ def read_package(archive: SafeArchive) -> Package:
     """Read the small parts of a package."""
     main_part = workbook_part(archive, "xl/workbook.xml")
     workbook = _parse(archive, main_part)
-    folder, name = posixpath.split(main_part)
+    folder, name = posixpath.split(main_part.replace("\\", "/"))
     relations = read_relations(archive, posixpath.join(folder, "_rels", name + ".rels"), folder)
     sheets: dict[str, str] = {}
     positions: list[str] = []

@@ -8,6 +8,7 @@ from collections.abc import Callable
 from functools import partial
 from pathlib import Path
 
+from audit.fleet.addresses import a1
 from audit.intake.cells import CellValue
 from audit.intake.opening.archive import SafeArchive
 from audit.intake.opening.bounds import MAXIMUM_FILE_BYTES, MEGABYTE
@@ -87,6 +88,9 @@ FACTS_OF_KIND: dict[FileKind, Callable[[Path, bytes], WorkbookFacts]] = {
 def _grid(sheet: RawSheet, facts: SheetFacts | None) -> SheetGrid:
     if facts is None:
         return SheetGrid(sheet.name, sheet.rows, hidden=sheet.hidden, merged=sheet.merged, notes=(NOTHING_KNOWN,))
+    notes = list(facts.notes)
+    if len(sheet.rows) < facts.last_row or (sheet.rows and len(sheet.rows[0]) < facts.last_column):
+        notes.append(f"it holds cells as far as {a1(facts.last_row, facts.last_column)} that could not be read")
     for (row, column), marker in facts.markers.items():
         _set(sheet.rows, row, column, marker)
     return SheetGrid(
@@ -98,7 +102,7 @@ def _grid(sheet: RawSheet, facts: SheetFacts | None) -> SheetGrid:
         merged=sheet.merged or tuple(facts.merged),
         percent_cells=united(facts.percent),
         struck_cells=united(facts.struck),
-        notes=tuple(facts.notes),
+        notes=tuple(notes),
     )
 
 

@@ -28,7 +28,7 @@ def xlsb_facts(path: Path, data: bytes) -> WorkbookFacts:
     """Facts of all sheets of an .xlsb file."""
     archive = SafeArchive(path, data)
     workbook = workbook_part(archive, "xl/workbook.bin")
-    folder, name = posixpath.split(workbook)
+    folder, name = posixpath.split(workbook.replace("\\", "/"))
     relations = read_relations(archive, posixpath.join(folder, "_rels", name + ".rels"), folder)
     styles = next((part for kind, part in relations.values() if kind.endswith("/styles") and part), None)
     sheets: dict[str, SheetFacts] = {}
