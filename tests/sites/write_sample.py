@@ -6,6 +6,7 @@ import csv
 from pathlib import Path
 
 from tests.sites.tarnholt.expected import EXPECTED_OBSERVATIONS
+from tests.sites.tarnholt.modification import modified_site
 from tests.sites.tarnholt.sample import Rows, sample_site
 from tests.sites.tarnholt.sound import sound_site
 from tests.sites.writing.site_folder import write_site
@@ -37,6 +38,11 @@ def write_all(folder: Path) -> None:
     write_table(
         EXPECTED_OBSERVATIONS, folder / "sound" / "expected_observations.csv", ("subject_key", "check", "reason")
     )
+    modified = modified_site()
+    after = folder / "after_modification"
+    write_site(modified.site, after)
+    write_table(modified.changes, after / "changes.csv", ("subject", "subject_key", "datum", "before", "after", "why"))
+    write_table(modified.findings, after / "expected_findings.csv", ("subject_key", "check", "turn", "cause"))
 
 
 if __name__ == "__main__":
