@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, replace
 from datetime import date
 from typing import Any
@@ -70,7 +70,7 @@ def case_workings(catalogue: Catalogue, check: Check, case: Case) -> Workings:
     unknown = sorted(set(case.given) - set(_KEYS))
     if unknown:
         raise BadRule(check.file, check.name, f"'{unknown[0]}' is not a key of a case{nearest(unknown[0], _KEYS)}")
-    motors: list[Mapping[str, Any]] = list(case.given.get("motors", [case.given.get("motor", {})]))
+    motors = _repeated(case.given.get("motors", [case.given.get("motor", {})]))
     rows: dict[str, list[dict[str, Any]]] = {
         "motor": [{} for _ in motors],
         "relay": [{"relay_tag": f"relay {number}"} for number, _ in enumerate(motors)],
@@ -113,6 +113,15 @@ def case_workings(catalogue: Catalogue, check: Check, case: Case) -> Workings:
         size = fleet.rows(quantity.subject)
         workings.preset(name, column_of(quantity, [values.get(row) for row in range(size)]))
     return workings
+
+
+def _repeated(motors: Iterable[Mapping[str, Any]]) -> list[Mapping[str, Any]]:
+    """Give the motors of a case; one with the key `times` stands for so many alike."""
+    return [
+        {name: value for name, value in given.items() if name != "times"}
+        for given in motors
+        for _ in range(int(given.get("times", 1)))
+    ]
 
 
 def _with_one_group(fleet: Fleet, motors: int) -> Fleet:

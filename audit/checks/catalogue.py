@@ -69,6 +69,8 @@ class Catalogue:
         for requirement in check.requirements:
             parts = (requirement.when, requirement.judged, requirement.bound, requirement.within)
             nodes += [node for node in parts if node is not None]
+        nodes += [Name(name) for names in check.slips.values() for name in names]
+        nodes += [Name(name) for name in (*check.signs, check.beyond) if name is not None]
         found: set[str] = set()
         while nodes:
             for name in set(names_in(nodes.pop())) - found:

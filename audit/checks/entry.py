@@ -197,10 +197,17 @@ def read_entry(path: Path, name: str, entry: object, pack: str) -> list[Check]:
     if entry.get("for_each") is None:
         return [_one(path, name, entry, pack, None)]
     eaches = _eaches(path, name, entry)
-    # cases are written for the first setting of the list and stand for all
-    first = [_one(path, name, _filled(entry, eaches[0]), pack, eaches[0]["setting"])]
-    rest = [_one(path, name, {**_filled(entry, words), "case": []}, pack, words["setting"]) for words in eaches[1:]]
-    return first + rest
+    cases = _listed(entry["case"])
+    first = eaches[0]["setting"]
+    for setting in {case.get("setting", first) for case in cases} - {words["setting"] for words in eaches}:
+        raise _refuse(path, name, f"a case is for '{setting}', which 'for_each' does not list")
+    # a case is for the setting that it names, else for the first of the list; it stands for all
+    checks = []
+    for words in eaches:
+        own = [case for case in cases if case.get("setting", first) == words["setting"]]
+        plain = [{key: value for key, value in case.items() if key != "setting"} for case in own]
+        checks.append(_one(path, name, _filled({**entry, "case": plain}, words), pack, words["setting"]))
+    return checks
 
 
 def _one(path: Path, name: str, entry: Mapping[str, Any], pack: str, each: str | None) -> Check:

@@ -126,8 +126,8 @@ def _motor_facts(fleet: Fleet) -> Iterator[tuple[str, Column]]:
     motors, relays, buses = (_table(fleet, subject) for subject in ("motor", "relay", "bus"))
     tag, relay, bus = (_of(motors, name) for name in ("motor", "relay", "bus"))
     windings = [_labels(_of(motors, name)) for name in _TELL_WINDINGS_APART]
-    own_tags = [text or exact(key) for text, key in zip(_texts(tag), motors.keys, strict=True)]
-    yield "rows_with_this_tag", _column("number", _alike(_codes(_joined([own_tags, *windings]))), tag.cell)
+    alike = np.where(tag.missing(), np.nan, _alike(_codes(_joined([_texts(tag), *windings]))))
+    yield "rows_with_this_tag", _column("number", alike, tag.cell)
 
     named = ~relay.missing()
     yield "relay_named", _column("truth", np.where(named, YES, NO).astype(np.int8), relay.cell)
@@ -137,7 +137,8 @@ def _motor_facts(fleet: Fleet) -> Iterator[tuple[str, Column]]:
     told = np.append(_settings_told(fleet), np.int8(NO))
     settings = np.where(linked >= 0, told[linked], found)
     yield "settings_found", _column("truth", np.where(named, settings, NO).astype(np.int8), relay.cell)
-    yield "other_motors_on_relay", _column("number", _others_on_relay(motors, linked, names), relay.cell)
+    others = np.where((linked < 0) & (found == UNKNOWN), np.nan, _others_on_relay(motors, linked, names))
+    yield "other_motors_on_relay", _column("number", others, relay.cell)
 
     bus_named = ~bus.missing()
     yield "bus_named", _column("truth", np.where(bus_named, YES, NO).astype(np.int8), bus.cell)

@@ -227,7 +227,7 @@ class FindingRenderer:
         subject = self.audit.outcomes[code.outcome].check.subject
         if requirement.kind == "must_be":
             on = code.present > 0
-            return on, "on" if on else "off"
+            return on, self._switch_word(requirement, on)
         if quantity is not None and quantity.kind != "number":
             text = self.trace.text_of(subject, code.row, quantity.name)
             return text, text
@@ -236,6 +236,13 @@ class FindingRenderer:
         if quantity is not None and quantity.kind == "number":
             return code.present, shown_number(code.present, quantity)
         return code.present, _with_unit(code.present, unit)
+
+    def _switch_word(self, requirement: Requirement, on: bool) -> str:
+        """Settings are on or off; facts are so or not."""
+        quantity = self.audit.workings.quantities.get(requirement.setting() or "")
+        if quantity is None or quantity.role == "setting":
+            return "on" if on else "off"
+        return "yes" if on else "no"
 
     def _band(self, band: SettingRange | None, code: FindingCode) -> tuple[float | None, float | None, str, str, str]:
         if band is None or not band.bounded()[code.row]:
@@ -270,7 +277,7 @@ class FindingRenderer:
     def _because(self, requirement: Requirement, code: FindingCode, check: Check, present_text: str, unit: Unit) -> str:
         label = self._label(requirement, self.audit.workings.quantities.get(requirement.setting() or ""))
         if requirement.kind == "must_be":
-            return f"{label} is {present_text}, wanted is {requirement.text}"
+            return f"{label}: {present_text}, wanted: {self._switch_word(requirement, requirement.text == 'on')}"
         if requirement.kind == "must_be_stated":
             return f"{label} is not stated"
         assert requirement.bound is not None
