@@ -45,13 +45,12 @@ def new_relay(motor: Record, layout: str, relay_type: str, exported: date) -> Re
         "relay_role": "motor",
         "relay_type": relay_type,
         "settings_export_date": exported,
-        "setting_group": "1",
-        "group_active": True,
-        "group_selectable": True,
         "relay_frequency_hz": FREQUENCY_HZ,
         "relay_phase_rotation": "abc",
         **told_to_relay(motor),
     }
+    if layout != "lv_long":
+        relay |= {"setting_group": "1", "group_active": True, "group_selectable": True}
     full_load = number(motor, "full_load_a")
     Setter(relay, motor).put("relay_full_load_a", full_load)
     return relay
@@ -288,7 +287,8 @@ def _alarm_only(relay: Record) -> None:
     for element in ("thermal", "unbalance", "jam", "undercurrent", "stator_temperature", "bearing_temperature"):
         if f"{element}_trip_on" in relay:
             relay[f"{element}_trip_on"] = False
-            relay[f"{element}_alarm_on"] = True
+            if element != "jam":
+                relay[f"{element}_alarm_on"] = True
     relay["start_timer_on"] = False
     relay["starts_limit_on"] = False
     relay["thermal_opens"] = relay["unbalance_opens"] = "nothing"

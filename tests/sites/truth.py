@@ -44,8 +44,8 @@ def motor_truth(site: Site) -> dict[str, Record]:
 
 
 def setting_truth(site: Site) -> dict[str, Record]:
-    """Give for each motor tag the primary settings of the relay that it names, or of its overload device."""
-    relays = {text(relay, "relay_tag"): relay for relay in site.relays}
+    """Give for each motor tag the primary settings of its relay's active group, or of its overload device."""
+    relays = {text(relay, "relay_tag"): relay for relay in site.relays if relay.get("group_active", True)}
     truth: dict[str, Record] = {}
     for motor in site.motors:
         own: Record = {name: motor[name] for name in OF_OVERLOAD_RELAY if name in motor}

@@ -25,7 +25,7 @@ def write_table(rows: Rows, path: Path, headers: tuple[str, ...]) -> None:
 def write_all(folder: Path) -> None:
     """Write everything that the generator owns into a folder."""
     sample = sample_site()
-    write_site(sample.site, folder)
+    write_site(sample.site, folder, ("planted_defects.csv", "missing_data.csv"))
     write_table(
         sample.defects,
         folder / "planted_defects.csv",
@@ -34,13 +34,13 @@ def write_all(folder: Path) -> None:
     write_table(
         sample.missing, folder / "missing_data.csv", ("subject", "subject_key", "datum", "stands_in_cell", "why")
     )
-    write_site(sound_site(), folder / "sound")
+    write_site(sound_site(), folder / "sound", ("expected_observations.csv",))
     write_table(
         EXPECTED_OBSERVATIONS, folder / "sound" / "expected_observations.csv", ("subject_key", "check", "reason")
     )
     modified = modified_site()
     after = folder / "after_modification"
-    write_site(modified.site, after)
+    write_site(modified.site, after, ("changes.csv", "expected_findings.csv"))
     write_table(modified.changes, after / "changes.csv", ("subject", "subject_key", "datum", "before", "after", "why"))
     write_table(modified.findings, after / "expected_findings.csv", ("subject_key", "check", "turn", "cause"))
 

@@ -12,6 +12,13 @@ from tests.sites.tarnholt.buses import tarnholt_buses
 SEED = 20261130
 
 
+def _second_group(site: Site, tag: str) -> None:
+    """Give a relay a second group that an input can select, set like the first."""
+    relay = site.relay_of(tag)
+    second = relay | {"setting_group": "2", "group_active": False}
+    site.relays.insert(site.relays.index(relay) + 1, second)
+
+
 def sound_site() -> Site:
     """Make the site as a careful engineer would leave it."""
     site = Site("Tarnholt Quarry and Lime Works", buses=tarnholt_buses())
@@ -26,5 +33,7 @@ def sound_site() -> Site:
     ):
         for family in families:
             add_family(site, family, random)
+    for tag in ("BC-110A", "BC-110B"):
+        _second_group(site, tag)
     settle_buses(site, site.buses)
     return site

@@ -66,6 +66,11 @@ ELEMENTS = (
         ),
     ),
     ("51G", "earth_fault", (("earth_fault_trip_pickup_a", "Pickup"), ("earth_fault_trip_delay_s", "Delay"))),
+    ("51", "overcurrent", ()),
+    ("87", "differential", ()),
+    ("27", "undervoltage", ()),
+    ("59", "overvoltage", ()),
+    ("47", "phase_sequence", ()),
     (
         "66",
         "starts_limit",

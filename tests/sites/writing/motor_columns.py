@@ -66,8 +66,8 @@ STARTING = (
     _one("Relay On Supply Side", "relay_on_supply_side"),
     _one("Starting Current", "locked_rotor_a", "A"),
     Column("Stall Time", "s", ("safe_stall_hot_s", "safe_stall_cold_s"), "stall"),
-    _one("Thermal Limit Hot", "hot_limit_curve"),
-    _one("Thermal Limit Cold", "cold_limit_curve"),
+    _one("Hot Limit Curve", "hot_limit_curve"),
+    _one("Cold Limit Curve", "cold_limit_curve"),
     _one("Run-up Time", "stated_start_time_s", "s"),
     _one("Run-up Time 80 % Un", "stated_start_time_at_lowest_voltage_s", "s"),
     _one("Minimum Starting Voltage", "lowest_start_voltage_pct", "%"),
@@ -148,6 +148,7 @@ TRANSFORMERS = (
 )
 CABLE = (
     Column("Cable", "mm2", ("cable_size_mm2", "cable_runs"), "cable"),
+    _one("No. of Cables", "cable_runs"),
     _one("Cable Length", "cable_length_m", "m"),
     _one("Conductor", "cable_conductor"),
     _one("Cable Insulation", "cable_insulation"),

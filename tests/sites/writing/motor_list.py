@@ -10,6 +10,7 @@ from openpyxl import Workbook
 from openpyxl.cell.cell import Cell
 from openpyxl.styles import Alignment, Border, Font, PatternFill, Side
 from openpyxl.utils import get_column_letter
+from openpyxl.worksheet.properties import PageSetupProperties
 from openpyxl.worksheet.worksheet import Worksheet
 
 from tests.sites.plant import Record, Site, number, text
@@ -33,6 +34,7 @@ ABSENT_MEANS_NO = (
     "relay_inside_delta",
     "undervoltage_by_bus_scheme",
 )
+WIDTHS = {"service": 30.0, "motor_make": 18.0, "driven_machine": 17.0, "starting_method": 10.0, "fuse": 18.0}
 TEXT_NUMBERS = {"rated_power_kw": 9, "full_load_a": 11, "cable_length_m": 13}
 """Every so-manieth cell of these columns holds its number as text, as lists copied from other programs do."""
 
@@ -85,6 +87,8 @@ def _write_area(sheet: Worksheet, site: Site, area: str, *, unit_row: bool) -> N
             _heading(sheet.cell(row + 2, place, f"[{column.unit}]" if column.unit else None))
     row += 3 if unit_row else 2
     sheet.freeze_panes = sheet.cell(row, 3)
+    sheet.row_dimensions[7].height = 45
+    _page(sheet, row)
     voltage = 0.0
     for motor in motors:
         if number(motor, "rated_voltage_v") != voltage:
@@ -111,9 +115,17 @@ def _write_area(sheet: Worksheet, site: Site, area: str, *, unit_row: bool) -> N
         row + 1, 2, "Note: standby units are listed with the duty unit. Blank cells: not known at time of issue."
     )
     for place, (_, column) in enumerate(columns, start=1):
-        sheet.column_dimensions[get_column_letter(place)].width = (
-            28 if column.quantities == ("service",) else max(9.0, min(len(column.header), 16) + 2)
+        sheet.column_dimensions[get_column_letter(place)].width = WIDTHS.get(
+            column.quantities[0], max(9.0, min(len(column.header), 14) + 2.0)
         )
+
+
+def _page(sheet: Worksheet, first_data_row: int) -> None:
+    """Print on A3 landscape, four pages wide, headings repeated."""
+    sheet.page_setup.orientation, sheet.page_setup.paperSize = "landscape", sheet.PAPERSIZE_A3
+    sheet.sheet_properties.pageSetUpPr = PageSetupProperties(fitToPage=True)
+    sheet.page_setup.fitToWidth, sheet.page_setup.fitToHeight = 4, 0
+    sheet.print_title_rows, sheet.print_title_cols = f"6:{first_data_row - 1}", "A:B"
 
 
 def _title_block(sheet: Worksheet, site: str, area: str) -> None:

@@ -11,8 +11,11 @@ from tests.sites.writing.motor_list import write_motor_list
 from tests.sites.writing.wide_settings import write_wide_settings
 
 
-def write_site(site: Site, folder: Path) -> None:
-    """Write motor list, settings, start records and bus list of a site into a folder."""
+def write_site(site: Site, folder: Path, unread: tuple[str, ...] = ()) -> None:
+    """Write motor list, settings, start records and bus list of a site into a folder, and what the site says of them.
+
+    `unread` names tables in the folder that are none of the site's own and shall be left unread.
+    """
     folder.mkdir(parents=True, exist_ok=True)
     write_motor_list(site, folder / "motor_list.xlsx")
     write_wide_settings(site, folder / "relay_settings_switchgear.xlsx")
@@ -25,3 +28,7 @@ def write_site(site: Site, folder: Path) -> None:
     if below:
         write_start_workbook(below, folder / "start_records_lv.xlsx")
     write_bus_list(site, folder / "bus_list.xlsx")
+    lines = [f'site = "{site.name}"', 'code = "IEC"']
+    for name in unread:
+        lines += ["", "[[sheet]]", f'file = "{name}"', 'table = "none"']
+    (folder / "fleet.toml").write_text("\n".join(lines) + "\n", "utf-8")
