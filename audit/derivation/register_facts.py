@@ -43,6 +43,7 @@ REGISTER_FACTS: dict[str, Quantity] = {
         _count("rows_with_this_tag", "motor", "rows of the motor list with this tag"),
         _truth("relay_named", "motor", "a relay is named"),
         _truth("settings_found", "motor", "settings of the named relay are found"),
+        _truth("settings_expected", "motor", "settings of the motor are given or a relay is named"),
         _count("other_motors_on_relay", "motor", "other motors that name the same relay"),
         _truth("bus_named", "motor", "a bus is named"),
         _truth("bus_found", "motor", "the named bus is in the bus list", "a bus list with a row for each bus"),
@@ -137,6 +138,8 @@ def _motor_facts(fleet: Fleet) -> Iterator[tuple[str, Column]]:
     told = np.append(_settings_told(fleet), np.int8(NO))
     settings = np.where(linked >= 0, told[linked], found)
     yield "settings_found", _column("truth", np.where(named, settings, NO).astype(np.int8), relay.cell)
+    expected = np.where((linked >= 0) | named, YES, NO).astype(np.int8)
+    yield "settings_expected", _column("truth", expected, relay.cell)
     others = np.where((linked < 0) & (found == UNKNOWN), np.nan, _others_on_relay(motors, linked, names))
     yield "other_motors_on_relay", _column("number", others, relay.cell)
 
