@@ -9,14 +9,15 @@ from functools import lru_cache
 import numpy as np
 from numpy.typing import NDArray
 
-from audit.engineering.point_curve import current_on_curves_a, time_on_curves_s
+from audit.engineering.point_curve import time_on_curves_s
 from audit.expression.functions import Function, Operand
 from audit.vocabulary.units import UNITS
 
 Floats = NDArray[np.float64]
 Reader = Callable[[Floats, Floats, Floats], Floats]
+_NUMBER = r"\d+(?:[.,]\d+)?(?:e[+-]?\d+)?"
 _POINT = re.compile(
-    r"(?P<current>\d+(?:[.,]\d+)?)\s*(?P<kilo>k)?a?\s*[:@/=\s]\s*(?P<time>\d+(?:[.,]\d+)?)\s*(?P<milli>m)?s?",
+    rf"(?P<current>{_NUMBER})\s*(?P<kilo>k)?a?\s*[:@/=\s]\s*(?P<time>{_NUMBER})\s*(?P<milli>m)?s?",
     re.IGNORECASE,
 )
 
@@ -27,6 +28,8 @@ def points_of_curve(text: str) -> tuple[tuple[float, ...], tuple[float, ...]] | 
 
     >>> points_of_curve("300 A: 40 s; 0.6 kA: 900 ms")
     ((300.0, 600.0), (40.0, 0.9))
+    >>> points_of_curve("1.25e+04 A: 0.008 s")
+    ((12500.0,), (0.008,))
     >>> points_of_curve("see drawing 12") is None
     True
     """
@@ -59,6 +62,14 @@ def _on_curves(curve: NDArray[np.object_], at: Floats, read: Reader) -> Floats:
     return result
 
 
+def _time_held_below(current: Floats, currents: Floats, times: Floats) -> Floats:
+    return time_on_curves_s(np.maximum(current, currents[:, 0]), currents, times)
+
+
+def _time_held_above(current: Floats, currents: Floats, times: Floats) -> Floats:
+    return time_on_curves_s(np.minimum(current, currents[:, -1]), currents, times)
+
+
 def time_on_curve(curve: NDArray[np.object_], current_a: Floats) -> Floats:
     """Time at a current on a curve given as points; missing outside the points.
 
@@ -68,26 +79,34 @@ def time_on_curve(curve: NDArray[np.object_], current_a: Floats) -> Floats:
     return _on_curves(curve, current_a, time_on_curves_s)
 
 
-def current_on_curve(curve: NDArray[np.object_], time_s: Floats) -> Floats:
-    """Current at a time on a falling curve given as points; missing outside the points."""
-    return _on_curves(curve, time_s, current_on_curves_a)
+def least_time_on_curve(curve: NDArray[np.object_], current_a: Floats) -> Floats:
+    """Time that passes at least: below the first point of a falling curve it is no less than there.
+
+    >>> least_time_on_curve(np.array(["300 A: 40 s; 600 A: 10 s"], dtype=object), np.array([200.0])).tolist()
+    [40.0]
+    """
+    return _on_curves(curve, current_a, _time_held_below)
 
 
-_CURVE = Operand("curve", "text")
+def greatest_time_on_curve(curve: NDArray[np.object_], current_a: Floats) -> Floats:
+    """Time that passes at most: above the last point of a falling curve it is no more than there.
+
+    >>> greatest_time_on_curve(np.array(["300 A: 40 s; 600 A: 10 s"], dtype=object), np.array([900.0])).tolist()
+    [10.0]
+    """
+    return _on_curves(curve, current_a, _time_held_above)
+
+
+def _of_curve(name: str, call: Callable[[NDArray[np.object_], Floats], Floats], reads: str) -> Function:
+    operands = (Operand("curve", "text"), Operand("current_a", "number", UNITS["a"]))
+    return Function(name, call, operands, Operand("time", "number", UNITS["s"]), reads=reads)
+
 
 CURVE_FUNCTIONS: dict[str, Function] = {
-    "time_on_curve_s": Function(
-        "time_on_curve_s",
-        time_on_curve,
-        (_CURVE, Operand("current_a", "number", UNITS["a"])),
-        Operand("time", "number", UNITS["s"]),
-        reads="time on the curve",
-    ),
-    "current_on_curve_a": Function(
-        "current_on_curve_a",
-        current_on_curve,
-        (_CURVE, Operand("time_s", "number", UNITS["s"])),
-        Operand("current", "number", UNITS["a"]),
-        reads="current on the curve",
-    ),
+    function.name: function
+    for function in (
+        _of_curve("time_on_curve_s", time_on_curve, "time on the curve"),
+        _of_curve("least_time_on_curve_s", least_time_on_curve, "least time by the curve"),
+        _of_curve("greatest_time_on_curve_s", greatest_time_on_curve, "greatest time by the curve"),
+    )
 }
