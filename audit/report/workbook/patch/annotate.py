@@ -17,6 +17,7 @@ from audit.report.workbook.patch.painting import anchors, paint_sheet
 from audit.report.workbook.patch.properties import list_worksheets
 from audit.report.workbook.patch.record import Record, is_ours, marked_sheets, read_record, write_record
 from audit.report.workbook.patch.refusal import CannotPatch
+from audit.report.workbook.patch.saved_values import SavedValues
 from audit.report.workbook.patch.sheet_names import free_names
 from audit.report.workbook.patch.styles import MarkedCells, Styles
 from audit.report.workbook.patch.undo import take_back
@@ -74,11 +75,13 @@ def annotate_copy(
     *,
     author: str = "Settings audit",
     first: bool = True,
+    formulas: SavedValues | None = None,
 ) -> AnnotationOutcome:
     """Write a copy of `source` with marked cells and the sheets of `report`; nothing else in it changes.
 
     Several marks of one cell: the first one's fill holds, the notes follow one another. The report's sheets hold
-    values only: a formula in them is written as the text that it is. References from the report to its own sheets
+    values only: a formula in them is written as the text that it is, unless `formulas` declares its sheet and cell,
+    with the value that it has. References from the report to its own sheets
     follow their new names; `names_for_report` tells the names beforehand. Macros that count sheets by position
     see a change when `first` is set.
 
@@ -97,7 +100,7 @@ def annotate_copy(
         _mark_sheet(book, styles, name, sheet_marks, author, totals)
     names: dict[str, str] = {}
     if report is not None:
-        names = graft_report(book, styles, report, first)
+        names = graft_report(book, styles, report, first, formulas)
         list_worksheets(package, list(names.values()), [], first)
     authors = tuple(dict.fromkeys([*record.authors, author]))
     write_record(book, Record(tuple(names.values()), authors, tuple(styles.formers), tuple(totals.cells)))

@@ -26,6 +26,7 @@ from audit.report.workbook.patch.ooxml import (
 from audit.report.workbook.patch.package import Package, relationships_part
 from audit.report.workbook.patch.record import SHEET_MARK
 from audit.report.workbook.patch.relations import relate, relations, targets
+from audit.report.workbook.patch.saved_values import SavedValues
 from audit.report.workbook.patch.sheet_names import free_names, renamed
 from audit.report.workbook.patch.styles import Styles
 from audit.report.workbook.patch.workbook_part import SheetEntry, WorkbookPart
@@ -38,14 +39,17 @@ _REFUSED = ("legacyDrawing", "legacyDrawingHF", "oleObjects", "controls", "pictu
 _IDENTIFIER = f"{{{RELATIONSHIP_IDS}}}id"
 
 
-def graft_report(book: WorkbookPart, styles: Styles, report: Path, first: bool) -> dict[str, str]:
+def graft_report(
+    book: WorkbookPart, styles: Styles, report: Path, first: bool, formulas: SavedValues | None = None
+) -> dict[str, str]:
     """Put the report's sheets before or after the user's own; gives the name that each one got."""
-    return _Graft(book, styles, Package(report)).run(first)
+    return _Graft(book, styles, Package(report), formulas or {}).run(first)
 
 
 class _Graft:
-    def __init__(self, book: WorkbookPart, styles: Styles, report: Package) -> None:
+    def __init__(self, book: WorkbookPart, styles: Styles, report: Package, formulas: SavedValues) -> None:
         self._book = book
+        self._formulas = formulas
         self._target = book.package
         self._report = report
         self._report_book = WorkbookPart(report)
@@ -84,7 +88,8 @@ class _Graft:
         self._adapt_frame(root)
         self._graft_links(root, entry.part, part)
         self._graft_related(root, entry.part, part)
-        sheet.rows = [self._cells.rows(sheet.data[sheet.start : sheet.end])]
+        rows = sheet.data[sheet.start : sheet.end]
+        sheet.rows = [self._cells.rows(rows, self._formulas.get(entry.name), self._names)]
         self._target.put(part, sheet.content())
         return part
 

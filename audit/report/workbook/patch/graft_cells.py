@@ -1,16 +1,21 @@
-"""Rows of a report sheet rewritten for the user's workbook: formats renumbered, strings in place, no formulas."""
+"""Rows of a report sheet rewritten for the user's workbook: formats renumbered, strings in place.
+
+A formula becomes the text that it is, unless the report declares it as its own and gives the value that it has.
+"""
 
 from __future__ import annotations
 
 import html
 import re
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 
 from lxml import etree
 
 from audit.report.workbook.patch.graft_styles import StyleImport
 from audit.report.workbook.patch.markup import children
 from audit.report.workbook.patch.ooxml import MAIN
+from audit.report.workbook.patch.saved_values import SavedValue, formula_cell
+from audit.report.workbook.patch.sheet_names import renamed
 from audit.report.workbook.patch.tags import attribute, with_attribute
 from audit.report.workbook.patch.text import could_become_formula, escape_literals
 
@@ -31,9 +36,20 @@ class CellImport:
         self._strings: Sequence[bytes] = [
             _inline(item) for item in (children(shared_strings) if shared_strings is not None else ())
         ]
+        self._formulas: Mapping[str, SavedValue] = {}
+        self._names: Mapping[str, str] = {}
 
-    def rows(self, data: bytes) -> bytes:
-        """What lies between the tags of sheetData, as the user's workbook needs it."""
+    def rows(
+        self,
+        data: bytes,
+        formulas: Mapping[str, SavedValue] | None = None,
+        names: Mapping[str, str] | None = None,
+    ) -> bytes:
+        """What lies between the tags of sheetData, as the user's workbook needs it.
+
+        `formulas` are the cells whose formulas are carried, with their values; `names` the new names of sheets.
+        """
+        self._formulas, self._names = formulas or {}, names or {}
         return _ROW_OR_CELL.sub(self._replace, data)
 
     def _replace(self, found: re.Match[bytes]) -> bytes:
@@ -46,6 +62,10 @@ class CellImport:
         kind = attribute(attributes, b"t")
         formula = _FORMULA.search(inside)
         if formula is not None:
+            address = (attribute(attributes, b"r") or b"").decode()
+            if address in self._formulas:
+                text = renamed(html.unescape((formula[1] or b"").decode()), self._names)
+                return formula_cell(self._restyled(attributes), text, self._formulas[address])
             inside = b'<is><t xml:space="preserve">=' + (formula[1] or b"") + b"</t></is>"
         elif kind == b"s":
             value = _VALUE.search(inside)
