@@ -170,9 +170,7 @@ def _with_codes(call: Callable[..., Any], places: Mapping[int, Mapping[str, int]
 def _described(module: ModuleType, name: str) -> Function:
     call = getattr(module, name)
     function = function_from_signature(call, choices=(*_WORDS, *_CODES), returns=_RETURNS.get(name))
-    places = {
-        at: _CODES[operand.name] for at, operand in enumerate(function.operands) if operand.name in _CODES
-    }
+    places = {at: _CODES[operand.name] for at, operand in enumerate(function.operands) if operand.name in _CODES}
     reads = name.rsplit("_", 1)[0].replace("_", " ")
     return replace(function, call=_with_codes(call, places) if places else call, reads=reads)
 

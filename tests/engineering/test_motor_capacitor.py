@@ -11,9 +11,7 @@ from hypothesis import strategies as st
 from audit.engineering.motor_capacitor import compensated_current_a
 
 
-@given(
-    current=st.floats(1, 2000), factor=st.floats(0.05, 1.0), capacitor=st.floats(0, 1000)
-)
+@given(current=st.floats(1, 2000), factor=st.floats(0.05, 1.0), capacitor=st.floats(0, 1000))
 def test_line_current_is_the_phasor_sum(current: float, factor: float, capacitor: float) -> None:
     # motor current lags the voltage by acos(pf), capacitor current leads by a right angle
     motor = cmath.rect(current, -math.acos(factor))
