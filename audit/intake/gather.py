@@ -10,17 +10,21 @@ import numpy as np
 
 from audit.fleet.addresses import NO_CELL, SheetBook
 from audit.fleet.fleet import Complaint, InputFile, Question
+from audit.intake.candidates import ORDER, Candidate, candidates_of
 from audit.intake.gathered import CannotRead, ColumnReading, Gathered, SheetReading
-from audit.intake.layouts.block import is_block, known_tags, read_block
-from audit.intake.layouts.long import LongHeading, find_long_heading, long_heading_at, read_long
+from audit.intake.layouts.block import known_tags, read_block
+from audit.intake.layouts.change_log import read_change_log
+from audit.intake.layouts.long import read_long
+from audit.intake.layouts.points import read_points
 from audit.intake.layouts.wide import read_wide
-from audit.intake.opening import SheetGrid, UnreadableWorkbook, find_workbooks, open_workbook
+from audit.intake.opening import UnreadableWorkbook, find_workbooks, open_workbook
 from audit.intake.recognition.blocks import Readings, frame
 from audit.intake.recognition.cells_to_readings import Source
-from audit.intake.recognition.dictionary import combined_readings
-from audit.intake.recognition.header_rows import Heading, find_heading, heading_at
-from audit.intake.recognition.plans import MAPPED, UNREAD, Plan
 from audit.intake.recognition.decimal_mark import decimal_mark
+from audit.intake.recognition.dictionary import combined_readings
+from audit.intake.recognition.dual_voltage import choose_by_bus
+from audit.intake.recognition.header_rows import Heading
+from audit.intake.recognition.plans import MAPPED, UNREAD, Plan
 from audit.intake.recognition.row_kinds import rows_in_words
 from audit.intake.recognition.sheets import Records, Sheet, said
 from audit.intake.recognition.tables import Verdict, table_of
@@ -28,10 +32,6 @@ from audit.intake.resolve.names import exact
 from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map, same_header
 
 Progress = Callable[[str], None]
-ORDER = ("wide", "long", "block", "")
-"""Blocks come last: their headings are understood by the tags that lists name."""
-WIDE_ENOUGH = 4.0
-"""A list of settings has a relay, a group, perhaps a tag in common with wide tables; those have more."""
 
 
 @dataclass
@@ -59,25 +59,25 @@ class _Run:
             if isinstance(text, str)
         )
 
+    def records_named(self, quantity: str) -> dict[str, list[int]]:
+        """Give the records of the lists by the text of a quantity: a tag, a fuse, a bus."""
+        named: dict[str, list[int]] = {}
+        for block in self.readings:
+            if block.quantity == quantity and block.table in ("motor", "bus"):
+                for record, text in zip(block.record.tolist(), block.text.tolist(), strict=True):
+                    if isinstance(text, str):
+                        named.setdefault(exact(text), []).append(record)
+        return named
 
-@dataclass
-class _Candidate:
-    """A sheet with the layout found on it, and the table its headers fit."""
-
-    file: str
-    grid: SheetGrid
-    mapped: MappedSheet | None
-    layout: str = ""
-    heading: Heading | None = None
-    verdict: Verdict | None = None
-    listed: LongHeading | None = None
-
-    @property
-    def table(self) -> str:
-        """Give the table that the sheet holds, '' for none."""
-        if self.layout == "wide":
-            return self.verdict.table if self.verdict else ""
-        return "relay" if self.layout else ""
+    def full_load_a(self) -> dict[int, float]:
+        """Give the full-load current of the motor records that state it in amperes."""
+        return {
+            record: number
+            for block in self.readings
+            if block.quantity == "full_load_a" and block.table == "motor"
+            for record, number, unit in zip(block.record.tolist(), block.number.tolist(), block.unit, strict=True)
+            if number == number and unit in ("", "a")
+        }
 
 
 def gather(path: Path, progress: Progress | None = None) -> Gathered:
@@ -98,7 +98,7 @@ def gather(path: Path, progress: Progress | None = None) -> Gathered:
         raise CannotRead(
             _nothing(path, "the folder holds no workbook", "workbooks: .xlsx .xlsm .xls .xlsb .ods .csv .tsv")
         )
-    candidates: list[_Candidate] = []
+    candidates: list[Candidate] = []
     for file in files:
         tell(f"reading {file.name}")
         candidates += _candidates(file, run)
@@ -108,6 +108,7 @@ def gather(path: Path, progress: Progress | None = None) -> Gathered:
     tell("recognising tables")
     for candidate in sorted(candidates, key=lambda candidate: ORDER.index(candidate.layout)):
         _read(candidate, run)
+    choose_by_bus(run.readings, run.complaints, run.book)
     _must_run(run)
     site = run.map.site or (path.name if path.is_dir() else path.stem)
     facts = {**run.map.facts, "site": site}
@@ -128,7 +129,7 @@ def _nothing(path: Path, found: str, expected: str) -> Complaint:
     return Complaint(path.name, "", "", found, expected, "Check the path.", weight="stop")
 
 
-def _candidates(file: Path, run: _Run) -> list[_Candidate]:
+def _candidates(file: Path, run: _Run) -> list[Candidate]:
     """Open a workbook and look at each of its sheets."""
     try:
         workbook = open_workbook(file)
@@ -136,51 +137,15 @@ def _candidates(file: Path, run: _Run) -> list[_Candidate]:
         run.complaints.append(Complaint(file.name, "", "", error.found, error.expected, error.advice, weight="stop"))
         return []
     run.inputs.append(InputFile(file.name, workbook.sha256, str(file)))
-    return [
-        candidate
-        for grid in workbook.sheets
+    found: list[Candidate] = []
+    for grid in workbook.sheets:
         # sheets are numbered as they stand in their files, whatever the order of reading
-        if run.book.index(file.name, grid.name) >= 0
-        and (candidate := _candidate(file.name, grid, run.map.sheet(file.name, grid.name))) is not None
-    ]
+        run.book.index(file.name, grid.name)
+        found += candidates_of(file.name, grid, run.map.sheet(file.name, grid.name))
+    return found
 
 
-def _candidate(file: str, grid: SheetGrid, mapped: MappedSheet | None) -> _Candidate | None:
-    """Find the layout of a sheet and the table that it holds; the site map rules."""
-    if not grid.height or (mapped and mapped.table == "none"):
-        return None
-    candidate = _Candidate(file, grid, mapped)
-    wanted = mapped.layout if mapped else ""
-    if wanted in ("", "wide"):
-        if mapped and mapped.header_row:
-            candidate.heading = heading_at(grid, mapped.header_row, mapped.header_rows)
-        else:
-            candidate.heading = find_heading(grid)
-        candidate.verdict = _verdict(candidate.heading, mapped)
-    if wanted in ("", "long") and not (mapped and mapped.table not in ("", "relay")):
-        if mapped and mapped.header_row and wanted:
-            candidate.listed = long_heading_at(grid, mapped.header_row)
-        else:
-            candidate.listed = find_long_heading(grid)
-    if candidate.listed and (candidate.verdict is None or candidate.verdict.score < WIDE_ENOUGH):
-        candidate.layout = "long"
-    elif candidate.verdict is not None:
-        candidate.layout = "wide"
-    elif wanted == "block" or (not wanted and is_block(grid)):
-        candidate.layout = "block"
-    return candidate
-
-
-def _verdict(heading: Heading | None, mapped: MappedSheet | None) -> Verdict | None:
-    if heading is None:
-        return None
-    verdict = table_of(heading)
-    if mapped and mapped.table and (verdict is None or verdict.table != mapped.table):
-        return Verdict(mapped.table, WIDE_ENOUGH, heading.matches(mapped.table))
-    return verdict
-
-
-def _ensure_motor_list(candidates: list[_Candidate], path: Path, run: _Run) -> None:
+def _ensure_motor_list(candidates: list[Candidate], path: Path, run: _Run) -> None:
     """Let the best sheet with tags be the motor list where no sheet is one; refuse where none can be."""
     if any(candidate.table == "motor" for candidate in candidates):
         return
@@ -209,7 +174,7 @@ def _ensure_motor_list(candidates: list[_Candidate], path: Path, run: _Run) -> N
     )
 
 
-def _read(candidate: _Candidate, run: _Run) -> None:
+def _read(candidate: Candidate, run: _Run) -> None:
     """Read one sheet by its layout."""
     grid = candidate.grid
     source = Source(
@@ -229,24 +194,27 @@ def _read(candidate: _Candidate, run: _Run) -> None:
     _say_hidden(sheet)
     run.readings += sheet.readings
     run.columns += sheet.columns
-    heading = candidate.heading if candidate.layout == "wide" else None
-    listed = candidate.listed if candidate.layout == "long" else None
-    row = heading.first_row if heading else listed.row if listed else 0
-    depth = heading.depth if heading else 1 if listed else 0
-    run.sheets.append(SheetReading(candidate.file, grid.name, candidate.table, candidate.layout, row, depth))
+    row, depth = candidate.header_rows
+    table = candidate.table or "motor"
+    run.sheets.append(SheetReading(candidate.file, grid.name, table, candidate.layout, row, depth))
 
 
-def _by_layout(candidate: _Candidate, sheet: Sheet, run: _Run) -> bool:
+def _by_layout(candidate: Candidate, sheet: Sheet, run: _Run) -> bool:
     mapped = candidate.mapped
     relay, group = (mapped.relay, mapped.group) if mapped else ("", "")
     if candidate.layout == "long" and candidate.listed:
         return read_long(sheet, candidate.listed, group, relay)
     if candidate.layout == "block":
         return read_block(sheet, run.tags(), relay, group)
+    if candidate.layout == "points" and candidate.points:
+        motors, fuses = run.records_named("motor"), run.records_named("fuse")
+        return read_points(sheet, candidate.points, motors, fuses, run.full_load_a())
+    if candidate.layout == "log" and candidate.log:
+        return read_change_log(sheet, candidate.log, run.records_named("motor"), run.records_named("bus_name"))
     if candidate.layout == "wide" and candidate.heading and candidate.verdict:
         verdict = candidate.verdict
         columns = _mapped(candidate.heading, verdict, mapped, sheet.source)
-        return read_wide(sheet, candidate.heading, verdict.table, verdict.matches, sheet.grid.height, columns, group)
+        return read_wide(sheet, candidate.heading, verdict.table, verdict.matches, candidate.last_row, columns, group)
     return False
 
 

@@ -14,7 +14,7 @@ day_first = true
 file = "motors.xlsx"
 sheet = "Motors"
 table = "motor"                 # motor, relay, bus, start, or "none" to leave it unread
-layout = "wide"                 # wide, long, block
+layout = "wide"                 # wide, long, block, points, log
 header_row = 4
 header_rows = 2
 group = "1"                     # setting group of the whole sheet
@@ -47,7 +47,7 @@ from audit.vocabulary.spellings import UnitReading, dimensions_for, read_unit, s
 
 NAME = "fleet.toml"
 CODES = ("NFPA 70", "IEC")
-LAYOUTS = ("wide", "long", "block")
+LAYOUTS = ("wide", "long", "block", "points", "log")
 BASES = (
     "",
     "full_load",

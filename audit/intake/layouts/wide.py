@@ -12,6 +12,7 @@ from audit.intake.celltext import cell_text
 from audit.intake.recognition.blocks import VALUE, Integers, Readings, objects
 from audit.intake.recognition.header_rows import Heading
 from audit.intake.recognition.matching import HeaderMatch
+from audit.intake.recognition.missing_units import ask_about_units
 from audit.intake.recognition.plans import Plan, Planner
 from audit.intake.recognition.quantity_columns import read_named
 from audit.intake.recognition.row_kinds import RowKinds, kinds_of_rows, rows_in_words
@@ -35,6 +36,9 @@ def read_wide(
     first_rows = range(heading.first_data_row, last_row + 1)
     planner = Planner(sheet, heading, table, list(first_rows))
     plans = planner.plans(matches, mapped)
+    plans = ask_about_units(
+        plans, planner.sample, lambda c: sheet.address(heading.first_row + heading.depth - 1, c), sheet.source
+    )
     key = _key(plans, table)
     if key is None:
         return False

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import tomllib
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cache
 from importlib.resources import files
 
@@ -130,11 +130,16 @@ def _settled(meanings: list[Entry]) -> tuple[Entry, ...]:
 @cache
 def dictionary(table: str) -> Dictionary:
     """Give the dictionary of a table."""
-    entries: dict[str, tuple[Entry, ...]] = {}
+    meanings: dict[str, list[Entry]] = {}
     for layer in _layers(table):
-        for folded, meanings in layer.items():
-            if folded and folded not in entries:
-                entries[folded] = _settled(meanings)
+        for folded, found in layer.items():
+            known = meanings.get(folded)
+            if known is None:
+                meanings[folded] = list(found)
+            elif not any(entry.sure for entry in known):
+                # where the table itself is in doubt a guest adds to the doubt
+                known += [replace(entry, sure=False) for entry in found]
+    entries = {folded: _settled(found) for folded, found in meanings.items() if folded}
     compacted: dict[str, list[Entry]] = {}
     for folded, settled in entries.items():
         short = compact(folded)

@@ -146,7 +146,7 @@ def _level(grid: SheetGrid, row: int, last_row: int) -> tuple[dict[int, str], di
     spread = dict.fromkeys(texts, False)
     if row == last_row:
         return texts, spread
-    if len(set(texts.values())) < 2:
+    if len(set(texts.values())) == 1 and min(texts) <= _first_column(grid, row + 1, last_row):
         # one text above all columns is the title of the sheet
         return {}, {}
     merges = [area for area in grid.merged if area[0] <= row <= area[2] and area[3] > area[1]]
@@ -157,18 +157,28 @@ def _level(grid: SheetGrid, row: int, last_row: int) -> tuple[dict[int, str], di
                 if text and column not in texts:
                     texts[column], spread[column] = text, True
         return texts, spread
-    below = grid.rows[row] if row < grid.height else []
     current = ""
     for column in range(1, grid.width + 1):
+        # a header without anything below it stands for its own column alone
+        has_below = any(grid.rows[below][column - 1] is not None for below in range(row, last_row))
         if column in texts:
-            # a header without anything below it stands for its own column alone
-            has_below = column - 1 < len(below) and below[column - 1] is not None
             current = texts[column] if has_below else ""
-        elif current and column - 1 < len(below) and below[column - 1] is not None:
+        elif current and has_below:
             texts[column], spread[column] = current, True
         else:
             current = ""
     return texts, spread
+
+
+def _first_column(grid: SheetGrid, row: int, last_row: int) -> int:
+    """Give the first column that holds something in some rows."""
+    columns = [
+        column
+        for header in grid.rows[row - 1 : last_row]
+        for column, value in enumerate(header, 1)
+        if value is not None
+    ]
+    return min(columns, default=0)
 
 
 def _unit_row(grid: SheetGrid, row: int, texts: dict[int, tuple[str, ...]]) -> dict[int, str]:

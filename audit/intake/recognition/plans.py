@@ -126,7 +126,8 @@ class Planner:
     def _doubtful(self, column: int, found: HeaderMatch, plans: Mapping[int, Plan], taken: set[str]) -> Plan:
         header = self.heading.label(column)
         candidates = [name for name in found.candidates if name not in taken]
-        if not candidates:
+        if len(candidates) < len(found.candidates) and not found.by_unit:
+            # another column says it plainly
             return Plan(column, header)
         known = vocabulary().quantities
         unit_text = found.unit_text or self.heading.units.get(column, "")

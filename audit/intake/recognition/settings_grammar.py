@@ -42,7 +42,7 @@ _SAYS_LITTLE = frozenset(
         "select",
     ]
 )
-_SAYS_NOTHING = frozenset({"at", "a", "the", "of", "for", "value"})
+_SAYS_NOTHING = frozenset({"at", "the", "of", "for", "value"})
 
 
 @dataclass(frozen=True, slots=True)
