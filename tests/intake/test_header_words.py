@@ -10,6 +10,7 @@ import pytest
 from audit.intake.recognition.dictionary import TABLES
 from audit.intake.recognition.matching import match_header
 from audit.vocabulary.quantities import vocabulary
+from audit.vocabulary.spellings import UnitReading
 
 HEADERS = tomllib.loads(Path(__file__).with_name("headers.toml").read_text("utf-8"))
 LEAST_SHARE = 0.97
@@ -75,3 +76,9 @@ def test_headers_of_other_things_stay_unread(table):
         if (found := match_header(header, table)).known
     }
     assert mapped == {}
+
+
+def test_an_ampere_in_brackets_behind_a_pickup_is_its_unit() -> None:
+    # Trade usage: '50 Pickup (A)' gives the unit; the A is not the article of 'within a second'
+    found = match_header("50 Pickup (A)", "relay")
+    assert (found.quantity, found.unit) == ("short_circuit_trip_pickup_a", UnitReading("a"))
