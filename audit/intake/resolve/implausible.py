@@ -37,9 +37,8 @@ def withhold_implausible(
     told = [quantity for quantity in quantities if (picked[quantity.name].state != NOT_READ).any()]
     if not told:
         return
-    frame = pd.DataFrame({KEY: pd.Series(list(keys), dtype=object)})
     columns = {quantity.name: _checkable(quantity, picked[quantity.name], readings) for quantity in told}
-    frame = frame.assign(**columns)
+    frame = pd.DataFrame({KEY: pd.Series(list(keys), dtype=object), **columns})
     known = {quantity.name: quantity for quantity in told}
     slips: dict[tuple[str, str], list[int]] = {}
     shown: Counter[str] = Counter()
