@@ -3,7 +3,10 @@
 from __future__ import annotations
 
 import io
-from collections.abc import Collection
+import os
+import sys
+from collections.abc import Collection, Iterator
+from contextlib import contextmanager
 from dataclasses import dataclass
 from pathlib import Path
 
@@ -12,7 +15,7 @@ from python_calamine import CalamineError, CalamineWorkbook, SheetTypeEnum, Shee
 from audit.intake.cells import CellValue
 from audit.intake.opening.kinds import damaged, encrypted
 
-__all__ = ["RawSheet", "read_sheets"]
+STANDARD_ERROR = 2
 
 
 @dataclass(frozen=True)
@@ -28,7 +31,8 @@ class RawSheet:
 def read_sheets(path: Path, data: bytes, skip: Collection[str] = ()) -> list[RawSheet]:
     """Worksheets of a workbook in their order, without those to skip and without chart sheets."""
     try:
-        return _read_sheets(data, skip)
+        with quiet_panics():
+            return _read_sheets(data, skip)
     except CalamineError as error:
         if "password" in str(error).lower():
             raise encrypted(path) from error
@@ -38,6 +42,25 @@ def read_sheets(path: Path, data: bytes, skip: Collection[str] = ()) -> list[Raw
         if type(error).__name__ != "PanicException":
             raise
         raise damaged(path, "its content contradicts itself") from error
+
+
+@contextmanager
+def quiet_panics() -> Iterator[None]:
+    """Keep the reader's own outcry off the standard error stream; the refusal says what is needed."""
+    try:
+        kept = os.dup(STANDARD_ERROR)
+    except OSError:
+        yield  # there is no such stream
+        return
+    nowhere = os.open(os.devnull, os.O_WRONLY)
+    try:
+        sys.stderr.flush()
+        os.dup2(nowhere, STANDARD_ERROR)
+        yield
+    finally:
+        os.dup2(kept, STANDARD_ERROR)
+        os.close(nowhere)
+        os.close(kept)
 
 
 def _read_sheets(data: bytes, skip: Collection[str]) -> list[RawSheet]:

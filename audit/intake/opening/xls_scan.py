@@ -17,10 +17,12 @@ from audit.intake.opening.formats import BUILT_IN_PERCENT, shows_percent
 from audit.intake.opening.kinds import damaged, encrypted
 
 BEGIN, END, PASSWORD, DATE_SYSTEM, SHEET = 0x0809, 0x000A, 0x002F, 0x0022, 0x0085
+EXTENT = 0x0200
 FONT, FORMAT, CELL_FORMAT = 0x0031, 0x041E, 0x00E0
 COLUMN_INFO, ROW, FORMULA, TRUTH_OR_ERROR, SEVERAL_NUMBERS = 0x007D, 0x0208, 0x0006, 0x0205, 0x00BD
 ONE_CELL = frozenset({0x0203, 0x027E, 0x00FD, 0x0204, 0x00D6, FORMULA, TRUTH_OR_ERROR})
 NEWEST_VERSION = 0x0600
+LAST_ROW, LAST_COLUMN = 65_536, 256
 ERROR_CODES = {
     0x00: "#NULL!",
     0x07: "#DIV/0!",
@@ -63,13 +65,13 @@ def xls_facts(path: Path, data: bytes) -> WorkbookFacts:
     except DamagedCompoundFile as error:
         raise damaged(path, str(error)) from error
     book = _Globals()
-    sheets: dict[str, SheetFacts] = {}
+    sheets: list[_Sheet] = []
     try:
         sheet: _Sheet | None = None
         for offset, kind, content in _records(stream):
             if kind == BEGIN and offset in book.sheets:
                 sheet = _Sheet(path, book.sheets[offset], book)
-                sheets[sheet.name] = sheet.facts
+                sheets.append(sheet)
             elif kind == PASSWORD:
                 raise encrypted(path)
             elif sheet is None:
@@ -80,7 +82,7 @@ def xls_facts(path: Path, data: bytes) -> WorkbookFacts:
         raise damaged(path, "a record is shorter than its kind needs") from error
     if len(sheets) != len(book.sheets):
         raise damaged(path, "a sheet does not begin where the workbook says")
-    return WorkbookFacts(sheets, book.date_1904)
+    return WorkbookFacts({sheet.name: sheet.finish() for sheet in sheets}, book.date_1904)
 
 
 def _records(stream: bytes) -> Iterator[tuple[int, int, bytes]]:
@@ -155,6 +157,8 @@ class _Sheet:
             for place in range(4, len(content) - 2, 6):
                 (style,) = struct.unpack_from("<H", content, place)
                 self._note_cell((row + 1, column + 1 + (place - 4) // 6), style)
+        elif kind == EXTENT:
+            self._check_extent(content)
         elif kind == ROW:
             row, flags = struct.unpack_from("<H10xH", content)
             if flags & 0x20:
@@ -163,10 +167,21 @@ class _Sheet:
             first, last, flags = struct.unpack_from("<HH4xH", content)
             if flags & 0x1:
                 self.facts.hidden_columns.update(range(first + 1, min(last, 255) + 2))
-        elif kind == END:
-            self.facts.percent.append(packed(self._percent))
-            self.facts.struck.append(packed(self._struck))
-            check_reach(self._path, self.name, self.facts)
+
+    def finish(self) -> SheetFacts:
+        """Facts of the sheet once all its records have passed by."""
+        check_reach(self._path, self.name, self.facts)
+        self.facts.percent.append(packed(self._percent))
+        self.facts.struck.append(packed(self._struck))
+        return self.facts
+
+    def _check_extent(self, content: bytes) -> None:
+        """Refuse an extent that no .xls sheet can have: the reader takes memory for all of it."""
+        first_row, last_row, first_column, last_column = struct.unpack_from(
+            "<IIHH" if self._book.newest else "<HHHH", content
+        )
+        if not (first_row <= last_row <= LAST_ROW and first_column <= last_column <= LAST_COLUMN):
+            raise damaged(self._path, f"sheet '{self.name}' states an extent that no .xls sheet can have")
 
     def _note_cell(self, cell: Cell, style: int) -> None:
         self.facts.reach(*cell)

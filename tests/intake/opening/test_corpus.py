@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import struct
 from functools import partial
 from pathlib import Path
 
@@ -85,3 +86,12 @@ def test_the_scan_and_the_reader_of_values_see_as_far_as_each_other(path):
         return
     assert not [note for sheet in opened.sheets for note in sheet.notes if "could not be read" in note]
     assert not [note for sheet in opened.sheets for note in sheet.notes if "not known for this sheet" in note]
+
+
+def test_an_old_workbook_that_lies_about_its_extent_is_refused(tmp_path, opened_apart):
+    # record 0x0200 of [MS-XLS]: first row, row behind the last, first column, column behind the last
+    content = (CORPUS / "poi-finance.xls").read_bytes()
+    start = content.index(struct.pack("<HH", 0x0200, 14)) + 4
+    path = tmp_path / "lies.xls"
+    path.write_bytes(content[:start] + struct.pack("<IIHH", 0, 2**31, 0, 2**15) + content[start + 12 :])
+    assert "states an extent that no .xls sheet can have" in opened_apart(path)[0]
