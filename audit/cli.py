@@ -77,6 +77,37 @@ def explain(
 
 
 @app.command()
+def compare(
+    before: Annotated[Path, typer.Argument(metavar="BEFORE", help="A fleet, or the record of an audit.")],
+    after: Annotated[Path | None, typer.Argument(metavar="[AFTER]", help="The fleet, or record, as it is now.")] = None,
+    suppose: Annotated[
+        list[str] | None,
+        typer.Option("--set", metavar="WHAT", help="Suppose a value, e.g. bus=B2:fault_max_ka=31.5; several are fine."),
+    ] = None,
+    out: Annotated[
+        Path | None, typer.Option("--out", metavar="DIR", help="Where to write; default compare-<site>.")
+    ] = None,
+    rules: RulesFolder = None,
+    pack: Annotated[list[str] | None, typer.Option("--pack", metavar="NAME", help="Bring a pack into scope.")] = None,
+    share: Annotated[
+        float, typer.Option("--share", metavar="PCT", help="Margins and ranges count as moved beyond this share.")
+    ] = 1.0,
+    json_out: Annotated[bool, typer.Option("--json", help="Print the comparison on stdout as JSON.")] = False,
+    show_all: Annotated[bool, typer.Option("--all", help="Print every line of long tables.")] = False,
+    on: Annotated[str | None, typer.Option("--on", metavar="DAY", help="The day of the audit; default today.")] = None,
+) -> None:
+    """Compare two states of a fleet: what changed, which findings came and went, whom it touches, what to look at."""
+    from audit.commands.compare import run_compare
+
+    raise typer.Exit(
+        run_compare(
+            before, after, suppose=suppose or [], out=out, rules=rules, packs=pack or [], share_pct=share,
+            as_json=json_out, everything=show_all, audited_on=_day(on),
+        )
+    )  # fmt: skip
+
+
+@app.command()
 def columns(
     fleet: FleetPath,
     save: Annotated[

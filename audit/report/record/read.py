@@ -74,7 +74,8 @@ def read_record(path: Path) -> Record:
     content = _content(file)
     version = content["record_version"]
     values = file.parent / VALUES_FILE
-    fleet, verdicts = None, {}
+    fleet: Fleet | None = None
+    verdicts: dict[str, str] = {}
     if version >= FIRST_WITH_VALUES and values.is_file():
         fleet, verdicts = _read_values(values, content, file.parent / READINGS_FILE)
     return Record(file, version, date.fromisoformat(content["audited_on"]), content, fleet, verdicts)
@@ -147,7 +148,7 @@ def _readings(file: Path) -> pd.DataFrame:
     header = pd.read_csv(file, nrows=0).columns
     kinds = {name: _NUMBER_COLUMNS.get(name, "object") for name in header}
     numbers = [name for name in header if name in _NUMBER_COLUMNS]
-    return pd.read_csv(file, dtype=kinds, keep_default_na=False, na_values=dict.fromkeys(numbers, [""]))
+    return pd.read_csv(file, dtype=kinds, keep_default_na=False, na_values={name: [""] for name in numbers})
 
 
 def _column(line: Mapping[str, Any], size: int) -> Column:
