@@ -26,6 +26,8 @@ DATES_OF_CHANGE: Mapping[str, tuple[str, str]] = {
     "supply_change_stated": ("bus", "supply_changed_date"),
 }
 """Facts that say whether a date of change is given; none given means no change stated."""
+NFPA_70 = "NFPA 70"
+"""What a site that is under the US code states as its code."""
 _TELL_WINDINGS_APART = ("winding", "rated_speed_rpm", "poles", "starting_method")
 
 
@@ -45,6 +47,7 @@ REGISTER_FACTS: dict[str, Quantity] = {
         _truth("settings_found", "motor", "settings of the named relay are found"),
         _truth("settings_expected", "motor", "settings of the motor are given or a relay is named"),
         _count("other_motors_on_relay", "motor", "other motors that name the same relay"),
+        _truth("site_code_is_nfpa_70", "motor", "the site states NFPA 70 as its code"),
         _truth("bus_named", "motor", "a bus is named"),
         _truth("bus_found", "motor", "the named bus is in the bus list", "a bus list with a row for each bus"),
         _truth("motor_change_stated", "motor", "a replacement or rewind of the motor is stated"),
@@ -67,12 +70,17 @@ REGISTER_FACTS: dict[str, Quantity] = {
 def with_register_facts(fleet: Fleet) -> Fleet:
     """Give the fleet with the facts of its register as columns of motors, relays and buses."""
     columns: dict[str, dict[str, Column]] = {subject: {} for subject in ("motor", "relay", "bus")}
-    for name, column in (*_motor_facts(fleet), *_relay_facts(fleet), *_change_facts(fleet), *written_facts(fleet)):
+    for name, column in _facts(fleet):
         columns[REGISTER_FACTS[name].subject][name] = column
     for subject, found in columns.items():
         if subject in fleet.tables:
             fleet = fleet.with_columns(subject, found)
     return fleet
+
+
+def _facts(fleet: Fleet) -> Iterator[tuple[str, Column]]:
+    for of in (_motor_facts, _code_facts, _relay_facts, _change_facts, written_facts):
+        yield from of(fleet)
 
 
 def _table(fleet: Fleet, subject: str) -> Table:
@@ -152,6 +160,13 @@ def _motor_facts(fleet: Fleet) -> Iterator[tuple[str, Column]]:
     if not listed.any():
         found = np.full(len(motors), UNKNOWN, dtype=np.int8)
     yield "bus_found", _column("truth", found, bus.cell)
+
+
+def _code_facts(fleet: Fleet) -> Iterator[tuple[str, Column]]:
+    size = len(_table(fleet, "motor"))
+    code = fleet.facts.get("code", "")
+    stated = UNKNOWN if not code else YES if code == NFPA_70 else NO
+    yield "site_code_is_nfpa_70", _column("truth", np.full(size, stated, dtype=np.int8), np.full(size, NO_CELL))
 
 
 def _settings_told(fleet: Fleet) -> Bytes:
