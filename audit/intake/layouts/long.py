@@ -30,6 +30,7 @@ _VALUES = (
     "final, setting, set, set point, settings"
 )
 _AS_FOUND = "as found, af, found"
+_OUTPUT = "trips, output, assigned to, opens, trip output, output contact, trips device"
 _UNIT = "unit, units, uom, eng unit, engineering unit, dimension"
 _GROUP = "group, setting group, sg, grp, active group no"
 _BASE = "base, basis, reference, ref, multiple of, per unit of"
@@ -51,6 +52,7 @@ _ROLES = {
     "unit": _folded(_UNIT),
     "group": _folded(_GROUP),
     "base": _folded(_BASE),
+    "output": _folded(_OUTPUT),
 }
 
 
@@ -61,6 +63,8 @@ class LongHeading:
     row: int
     roles: Mapping[str, int]
     further_values: tuple[int, ...] = ()
+    every_name: str = ""
+    """What every row states where no column names settings: 'Output' in a table of what each element trips."""
 
 
 def find_long_heading(grid: SheetGrid) -> LongHeading | None:
@@ -101,6 +105,9 @@ def _roles_of(grid: SheetGrid, row: int) -> LongHeading | None:
     names = [column for column, text in free.items() if text in _ROLES["name"]]
     if not values:
         values = sorted((0, column) for column, text in free.items() if text in _ROLES["found"])
+    outputs = [column for column, text in free.items() if text in _ROLES["output"]]
+    if not values and not names and outputs and "function" in roles:
+        return LongHeading(row, {**roles, "value": outputs[0]}, every_name="Output")
     if not values:
         return None
     chosen = values[0][1]
@@ -124,7 +131,7 @@ def _names_settings(grid: SheetGrid, heading: LongHeading) -> bool:
     function = ""
     for row in range(heading.row + 1, min(grid.height, heading.row + 400) + 1):
         function = _text(grid, row, heading.roles.get("function")) or function
-        found = match_setting(function, _text(grid, row, heading.roles.get("name")))
+        found = match_setting(function, heading.every_name or _text(grid, row, heading.roles.get("name")))
         if found.known or found.open_part:
             seen.add(found.name or found.element + found.open_part)
             if len(seen) >= FEWEST_ROWS:
@@ -182,7 +189,7 @@ def read_long(sheet: Sheet, heading: LongHeading, group: str = "", relay: str = 
             unit = f"{unit or 'x'} {texts['base']}".strip()
         settings.add(
             last["function"],
-            texts.get("name", ""),
+            heading.every_name or texts.get("name", ""),
             sheet.address(row, roles.get("name") or roles["function"]),
             (row, roles["value"]),
             records[key],

@@ -24,8 +24,9 @@ from audit.intake.recognition.matching import (
     match_header,
     near_miss,
 )
-from audit.intake.recognition.plans import ASKED, MAPPED, SYNONYM, UNREAD, is_level, part_by_cells
+from audit.intake.recognition.plans import ASKED, MAPPED, SYNONYM, UNREAD
 from audit.intake.recognition.quantity_columns import read_named
+from audit.intake.recognition.second_signs import is_level, part_by_cells
 from audit.intake.recognition.settings_grammar import read_part, setting_named
 from audit.intake.recognition.sheets import Sheet
 from audit.intake.sitemap import MappedColumn

@@ -113,7 +113,7 @@ def _may_stand_in(table: str, quantity: Quantity, folded: str) -> bool:
 
 
 def _settled(meanings: list[Entry]) -> tuple[Entry, ...]:
-    """Give the meanings of one header, each once; two sure ones are a doubt, a combined reading wins over a sure one."""
+    """Give the meanings of one header, each once; two sure ones are a doubt, a combined one wins over a sure one."""
     for entry in meanings:
         if entry.combined and entry.sure:
             return (entry,)

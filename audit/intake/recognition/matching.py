@@ -24,7 +24,8 @@ from audit.vocabulary.spellings import UnitReading, dimension_of, read_unit, rea
 LONGEST_HEADER = 90
 NEAR = 0.84
 _GROUP = re.compile(
-    r"\b(?:setting group|set group|setting grp|group|grp|sg|gr)\s*(?P<group>\d|[a-h])\b|^g(?P<short>[1-8])\b|\bg(?P<last>[1-8])$"
+    r"\b(?:setting group|set group|setting grp|group|grp|sg|gr)\s*(?P<group>\d|[a-h])\b"
+    r"|^g(?P<short>[1-8])\b|\bg(?P<last>[1-8])$"
 )
 _LITTLE = frozenset(
     [
@@ -42,47 +43,22 @@ _LITTLE = frozenset(
     ]
 )
 _LEADS = {
-    "motor": frozenset(["motor", "nameplate", "name", "plate", "rated", "setting", "protection", "relay"]) - {"relay"},
-    "relay": frozenset(["relay", "setting", "protection"]),
-    "bus": frozenset(["bus", "board", "switchgear", "system"]),
-    "start": frozenset(["recorded", "record", "measured", "event"]),
+    "motor": frozenset({"motor", "nameplate", "name", "plate", "rated"}),
+    "relay": frozenset({"relay", "setting", "protection"}),
+    "bus": frozenset({"bus", "board", "switchgear", "system"}),
+    "start": frozenset({"recorded", "record", "measured", "event"}),
 }
 _LAST = {
     "motor": frozenset({"np", "nameplate"}),
-    "relay": frozenset(),
-    "bus": frozenset(),
+    "relay": frozenset[str](),
+    "bus": frozenset[str](),
     "start": frozenset({"recorded", "measured"}),
 }
-_NEUTRAL = frozenset(
-    [
-        "motor",
-        "nameplate",
-        "name",
-        "plate",
-        "rated",
-        "general",
-        "identification",
-        "electrical",
-        "mechanical",
-        "protection",
-        "setting",
-        "relay",
-        "data",
-        "details",
-        "info",
-        "information",
-        "equipment",
-        "load",
-        "basic",
-        "main",
-        "characteristics",
-        "and",
-        "&",
-        "technical",
-        "machine",
-        "supply",
-    ]
-)
+_NEUTRAL_WORDS = """
+    motor nameplate name plate rated general identification electrical mechanical protection setting relay data details
+    info information equipment load basic main characteristics and & technical machine supply
+"""
+_NEUTRAL = frozenset(_NEUTRAL_WORDS.split())
 
 
 @dataclass(frozen=True, slots=True)

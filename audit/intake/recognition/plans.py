@@ -9,20 +9,29 @@ import numpy as np
 
 from audit.fleet.column import Floats
 from audit.intake.cells import CellValue
-from audit.intake.celltext import KIND_CODES, CellKind, cell_text, read_number_column, read_truth_cells
+from audit.intake.celltext import CellKind, cell_text, read_number_column
 from audit.intake.recognition.dictionary import combined_readings
 from audit.intake.recognition.header_rows import Heading, unit_below
 from audit.intake.recognition.matching import HeaderMatch, near_miss
+from audit.intake.recognition.second_signs import (
+    BANDS,
+    by_choices,
+    factor_of,
+    is_level,
+    looks_like_tags,
+    only_one,
+    part_by_cells,
+    rivals_are_unlike,
+    unit_is_known,
+    units_fit,
+)
 from audit.intake.recognition.settings_grammar import setting_named
 from audit.intake.recognition.sheets import Sheet
 from audit.vocabulary.quantities import Quantity, vocabulary
-from audit.vocabulary.spellings import UnitReading, conversion, read_unit
+from audit.vocabulary.spellings import UnitReading, read_unit
 
 SAMPLED = 400
 SYNONYM, ASKED, UNREAD, MAPPED = "synonym", "asked", "unread", "site map"
-FULL_LOAD_TO_RATING = (0.95, 2.3)
-"""Full-load current over P / (sqrt(3) V): one over efficiency and power factor, 0.95 for rounding."""
-LOCKED_ROTOR_TO_RATING = (3.5, 12.0)
 
 
 @dataclass(frozen=True)
@@ -136,15 +145,16 @@ class Planner:
             return Plan(column, header)
         settled = ""
         if len(found.candidates) > 1:
-            fitting = [name for name in candidates if _units_fit(known[name], unit_text, sample)]
-            settled = fitting[0] if len(fitting) == 1 and _unit_is_known(unit_text, sample, known[fitting[0]]) else ""
+            fitting = [name for name in candidates if units_fit(known[name], unit_text, sample)]
+            settled = fitting[0] if len(fitting) == 1 and unit_is_known(unit_text, sample, known[fitting[0]]) else ""
         if not settled and (unit_text or len(found.by_unit) == 1):
-            settled = _only(
-                [n for n in found.by_unit if n in candidates and _units_fit(known[n], unit_text, sample)],
+            settled = only_one(
+                [n for n in found.by_unit if n in candidates and units_fit(known[n], unit_text, sample)],
                 unit_text,
                 sample,
                 known,
             )
+        settled = settled or by_choices([known[name] for name in found.candidates], sample)
         settled = settled or self._by_magnitude(column, candidates, unit_text, plans)
         if not settled and "motor" in candidates and looks_like_tags(sample):
             settled = "motor"
@@ -172,10 +182,9 @@ class Planner:
         ratio = ratio[np.isfinite(ratio)]
         if ratio.size < 3:
             return ""
-        bands = {"full_load_a": FULL_LOAD_TO_RATING, "locked_rotor_a": LOCKED_ROTOR_TO_RATING}
-        fits = [name for name in wanted if np.mean((ratio >= bands[name][0]) & (ratio <= bands[name][1])) >= 0.9]
+        fits = [name for name in wanted if np.mean((ratio >= BANDS[name][0]) & (ratio <= BANDS[name][1])) >= 0.9]
         rivals = [name for name in candidates if name not in wanted]
-        if rivals and not _rivals_are_unlike(rivals):
+        if rivals and not rivals_are_unlike(rivals):
             return ""
         return fits[0] if len(fits) == 1 else ""
 
@@ -195,12 +204,12 @@ class Planner:
         """Give the numbers of a column in its quantity's unit, missing where they cannot be had at once."""
         cells = [self.sheet.grid.rows[row - 1][plan.column - 1] for row in self.rows]
         read = read_number_column(cells, decimal_comma=self.sheet.source.decimal_comma)
-        factor = _factor(plan.unit, quantity)
+        factor = factor_of(plan.unit, quantity)
         values = read.values * factor
         for index, reading in read.odd.items():
             if reading.unit_text and reading.kind is CellKind.NUMBER:
                 own = read_unit(reading.unit_text, quantity)
-                values[index] = reading.number * _factor(own, quantity) if own else np.nan
+                values[index] = reading.number * factor_of(own, quantity) if own else np.nan
         return values
 
     def _ask(self, column: int, answers: tuple[str, ...]) -> None:
@@ -280,92 +289,3 @@ class Planner:
 
     def _cells(self, plan: Plan) -> list[CellValue]:
         return [self.sheet.grid.rows[row - 1][plan.column - 1] for row in self.rows]
-
-
-def _factor(unit: UnitReading | None, quantity: Quantity) -> float:
-    if unit is None or not unit.unit:
-        return 1.0
-    found = conversion(unit.unit, quantity)
-    return found[0] if found is not None and not unit.base else float("nan")
-
-
-def _only(fitting: Sequence[str], unit_text: str, sample: Sequence[CellValue], known: Mapping[str, Quantity]) -> str:
-    return fitting[0] if len(fitting) == 1 and _unit_is_known(unit_text, sample, known[fitting[0]]) else ""
-
-
-def _units_fit(quantity: Quantity, unit_text: str, sample: Sequence[CellValue]) -> bool:
-    """Tell whether header unit and cell units, where there are any, fit a quantity."""
-    if quantity.kind != "number":
-        return not unit_text
-    if unit_text:
-        return read_unit(unit_text, quantity) is not None
-    odd = read_number_column(sample).odd
-    units = {reading.unit_text for reading in odd.values() if reading.unit_text}
-    return all(read_unit(unit, quantity) is not None for unit in units)
-
-
-def _unit_is_known(unit_text: str, sample: Sequence[CellValue], quantity: Quantity) -> bool:
-    if quantity.kind != "number":
-        return False
-    if unit_text:
-        return True
-    return any(reading.unit_text for reading in read_number_column(sample).odd.values())
-
-
-def _rivals_are_unlike(rivals: Sequence[str]) -> bool:
-    """Tell whether other meanings of a current header could not have the size of the motor's own currents."""
-    return not set(rivals) & {"overload_dial_a", "contactor_rated_current_a", "relay_full_load_a", "running_current_a"}
-
-
-def looks_like_tags(sample: Sequence[CellValue]) -> bool:
-    """Tell whether cells could be tags: all different, and not simply counting up.
-
-    >>> looks_like_tags(["P-101", "P-102"]), looks_like_tags([1.0, 2.0, 3.0])
-    (True, False)
-    """
-    texts = [cell_text(value) for value in sample]
-    if len(set(texts)) < 0.9 * len(texts) or not texts:
-        return False
-    if all(text.replace(".", "").isdigit() for text in texts):
-        return False
-    return sum(any(c.isdigit() for c in text) and any(c.isalpha() for c in text) for text in texts) > 0.7 * len(texts)
-
-
-def is_level(header: str) -> bool:
-    """Tell whether a header is written as a level: 'I>>', 'U<'."""
-    return header.rstrip().endswith((">", "<")) and not header.strip().casefold().startswith("t")
-
-
-def part_by_cells(
-    element: str, stage: str, sample: Sequence[CellValue], unit_text: str = "", level_sign: bool = False
-) -> str | None:
-    """Tell by its cells which part of an element a column holds; '' where it holds nothing, None where it is open.
-
-    >>> part_by_cells("jam", "trip", ["Yes", "No", "OFF"])
-    'jam_trip_on'
-    >>> part_by_cells("jam", "trip", ["2.5 x FLA", "OFF"]), part_by_cells("jam", "trip", ["2 s"])
-    ('jam_trip_pickup_a', 'jam_trip_delay_s')
-    """
-    if not sample:
-        return ""
-    known = vocabulary().quantities
-    kinds = [reading.kind for reading in read_truth_cells(sample)]
-    idle = (CellKind.NOT_USED, CellKind.MISSING, CellKind.TO_BE_CONFIRMED, CellKind.ERROR)
-    judged = [kind for kind in kinds if kind not in idle]
-    level = setting_named(element, f"{stage}_pickup")
-    delay = setting_named(element, f"{stage}_delay")
-    switch = setting_named(element, f"{stage}_on")
-    if not unit_text and sum(kind is CellKind.TRUTH for kind in judged) >= 0.9 * len(judged):
-        return switch or ""
-    read = read_number_column(sample)
-    numbers = np.count_nonzero(read.kinds == KIND_CODES[CellKind.NUMBER])
-    if numbers == 0 or numbers < 0.5 * len(judged):
-        return switch if switch and not unit_text else None
-    units = {unit_text} if unit_text else {r.unit_text for r in read.odd.values() if r.unit_text}
-    choices = [name for name in (level, delay) if name]
-    if units:
-        fitting = [name for name in choices if all(read_unit(unit, known[name]) is not None for unit in units)]
-        return fitting[0] if len(fitting) == 1 else None
-    if level and (level_sign or (not delay and not known[level].bases)):
-        return level
-    return None

@@ -167,3 +167,16 @@ def test_off_not_used_zero_pending_and_blank_are_five_things(gathered):
         "R-105": "not_used",
     }
     assert [question.cell for question in made.questions] == ["B5"]
+
+
+def test_a_table_of_outputs_says_what_each_element_opens(gathered):
+    rows = [
+        ["Relay", "Element", "Trips"],
+        ["R-101", "50", "Breaker"],
+        ["R-101", "49 Thermal overload", "Contactor"],
+        ["R-102", "51G", "Contactor"],
+    ]
+    made = read(gathered, rows, "Outputs")
+    assert values(made, "short_circuit_opens") == {"R-101": "Breaker"}
+    assert values(made, "thermal_opens") == {"R-101": "Contactor"}
+    assert values(made, "earth_fault_opens") == {"R-102": "Contactor"}

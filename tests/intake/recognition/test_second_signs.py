@@ -142,3 +142,21 @@ def test_a_length_without_unit_is_asked_among_us_units_and_said_among_others(gat
     read = gathered({"Motors": iec})
     assert values(read, "cable_length_m") == {"P-1": 300}
     assert any("'Cable Length' has no unit" in complaint.found for complaint in read.complaints)
+
+
+def test_letters_tell_a_code_from_a_design_where_only_one_has_them(gathered):
+    read = gathered(with_column("Code", ["F", "G", "F"]))
+    assert values(read, "locked_rotor_kva_letter") == {"P-1": "F", "P-2": "G", "P-3": "F"}
+    read = gathered(with_column("Code", ["B", "B", "A"]))
+    assert asked(read) == ["Code"]
+
+
+def test_a_class_is_told_by_what_it_says(gathered):
+    assert values(gathered(with_column("Class", ["F", "F/B", "H"])), "insulation_class")["P-2"] == "F/B"
+    assert values(gathered(with_column("Class", ["IE3", "IE3", "IE2"])), "efficiency_class")["P-1"] == "IE3"
+    assert values(gathered(with_column("Class", [10, 20, 10])), "overload_trip_class")["P-2"] == 20
+
+
+def test_the_protection_class_of_an_enclosure_is_no_trip_class(gathered):
+    read = gathered(with_column("Protection Class", ["IP55", "IP55", "IP23"]))
+    assert "overload_trip_class" not in set(read.readings["quantity"])
