@@ -61,7 +61,8 @@ class SettingRange:
         return ~np.isnan(self.low) | ~np.isnan(self.high)
 
 
-def _settings_beneath(node: Node, workings: Workings, seen: set[str]) -> set[str]:
+def settings_beneath(node: Node, workings: Workings, seen: set[str]) -> set[str]:
+    """Give the settings that an expression rests on, through all recipes; `seen` gathers the names met."""
     found: set[str] = set()
     for name in names_in(node):
         if name in seen or name not in workings.quantities:
@@ -71,7 +72,7 @@ def _settings_beneath(node: Node, workings: Workings, seen: set[str]) -> set[str
             found.add(name)
         recipe = workings.recipes.get(name)
         for way in recipe.ways if recipe else ():
-            found |= _settings_beneath(way.node, workings, seen)
+            found |= settings_beneath(way.node, workings, seen)
     return found
 
 
@@ -90,7 +91,7 @@ def permissible_ranges(outcomes: Iterable[Outcome], workings: Workings) -> dict[
                 continue
             size = len(outcome.verdict)
             band = ranges.setdefault(quantity.name, SettingRange.open(quantity.name, "motor", size))
-            moving = bool(_settings_beneath(judged.requirement.bound, workings, set()) - {quantity.name})
+            moving = bool(settings_beneath(judged.requirement.bound, workings, set()) - {quantity.name})
             _narrow(
                 band,
                 number,
