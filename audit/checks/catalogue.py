@@ -22,6 +22,8 @@ from audit.vocabulary.quantities import Quantity, vocabulary
 from audit.vocabulary.units import DIMENSIONLESS, UNITS
 
 CORE = "core"
+NOT_CHECKS = ("limits.toml", "change_impact.toml")
+"""Rule files of other things than checks."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -91,7 +93,7 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
     recipes, derived = read_recipes([folder / "derived"])
     checks: list[Check] = []
     for path in sorted(folder.glob("*.toml")):
-        if path.name != "limits.toml":
+        if path.name not in NOT_CHECKS:
             checks += _read_checks(path, CORE, read_rule_file(path))
     evidence: dict[str, tuple[str, ...]] = {}
     for path in sorted((folder / "packs").glob("*.toml")):
