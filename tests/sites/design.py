@@ -207,7 +207,9 @@ def _starts(
     low = round(min(least, 0.99), 3)
     high = low + 0.35 * (1 - low)
     times = tuple(run_up_time_s(machine, inertia, family.load, voltage, family.loading) for voltage in (low, high))
-    behaviour = StartBehaviour((low, high), (times[0], times[1]), machine.locked_rotor_a)
+    # where no starts an hour are stated a heavy fan gets an hour's rest
+    rest = 35.0 if "stated_starts_per_hour" in motor else 65.0
+    behaviour = StartBehaviour((low, high), (times[0], times[1]), machine.locked_rotor_a, rest_min=rest)
     return simulate_starts(str(motor["motor"]), behaviour, family.starts, random)
 
 

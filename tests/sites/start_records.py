@@ -23,10 +23,12 @@ class StartBehaviour:
     """Run-up time at each of the two voltages; between them it runs straight against 1/V squared."""
     current_at_rated_a: float
     follows_voltage: bool = True
+    rest_min: float = 35.0
+    """Minutes until a second start follows, where one follows soon."""
 
 
 def simulate_starts(tag: str, behaviour: StartBehaviour, count: int, random: np.random.Generator) -> list[Record]:
-    """Give recorded starts of a motor: hours apart, now and then a second one half an hour later."""
+    """Give recorded starts of a motor: hours apart, now and then a second one soon after."""
     span = (LAST_DAY - FIRST_DAY).total_seconds()
     moments = np.sort(random.uniform(0, span, count))
     low, high = behaviour.voltages_pu
@@ -44,7 +46,7 @@ def simulate_starts(tag: str, behaviour: StartBehaviour, count: int, random: np.
         current = behaviour.current_at_rated_a * (voltage if behaviour.follows_voltage else 1.0)
         current *= 1 + float(np.clip(random.normal(-0.004, 0.006), -0.016, 0.012))
         again = place % 9 == 4
-        for later in (0.0, 35.0) if again else (0.0,):
+        for later in (0.0, behaviour.rest_min) if again else (0.0,):
             starts.append(
                 {
                     "start_motor": tag,

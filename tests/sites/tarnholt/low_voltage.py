@@ -176,7 +176,16 @@ FAMILIES_OVERLOAD = (
         **OVERLOAD,
     ),
     Family(
-        lettered("F-650"), "Hydrator exhaust fan", KILNS, "fan", "MCC-42", 55, 4, inertia=1.35, starts=14, **OVERLOAD
+        lettered("F-650"),
+        "Hydrator exhaust fan",
+        KILNS,
+        "fan",
+        "MCC-42",
+        55,
+        4,
+        inertia=1.75,
+        facts={"safe_stall_hot_s": 28.0, "safe_stall_cold_s": 40.0},
+        **OVERLOAD,
     ),
     Family(
         numbered("BC-", 301, 6),

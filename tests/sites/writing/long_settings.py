@@ -88,7 +88,11 @@ WORDS = (
     ("51LR", "jam_blocked_by_state", "Jam Blocked In Start"),
     ("51G", "earth_fault_opens", "51G Trips"),
 )
-ALARMS = {"thermal": ("49", "Alarm Enable"), "unbalance": ("46", "Alarm Enable")}
+ALARMS = {
+    "undercurrent": ("37", "Alarm Enable"),
+    "thermal": ("49", "Alarm Enable"),
+    "unbalance": ("46", "Alarm Enable"),
+}
 
 
 def write_long_settings(site: Site, path: Path) -> None:

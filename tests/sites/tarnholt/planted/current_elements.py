@@ -37,10 +37,13 @@ SHORT_CIRCUIT = (
         alongside={"short_circuit_trip_pickup_a": None, "short_circuit_trip_delay_s": None},
     ),
     Defect(
-        numbered("BC-", 101, 4),
+        numbered("BC-", 201, 6),
         "short_circuit_trip_on",
         True,
-        (unsafe("short-circuit-left-to-fuse", "opens a 4.5 kA contactor on a bus of more than 9 kA"),),
+        (
+            unsafe("short-circuit-left-to-fuse", "opens before the fuse has cleared what the contactor cannot break"),
+            unsafe("takeover-inside-contactor-rating", "the contactor has to break more than it can"),
+        ),
         alongside={
             "short_circuit_trip_pickup_a": Of("locked_rotor_a", 1.85),
             "short_circuit_trip_delay_s": 0.0,
@@ -108,28 +111,33 @@ THERMAL = (
     ),
     Defect(
         lettered("C-401"),
-        "hot_cold_ratio",
-        0.20,
+        "heating_time_constant_s",
+        Of("heating_time_constant_s", 0.3),
         (
-            nuisance(
-                "thermal-rides-through-hot-start", "hot trip in a fifth of the cold time, before the start is over"
-            ),
+            nuisance("thermal-rides-through-hot-start", "trips from hot before the start is over"),
+            observation("thermal-permits-listed-starts", "does not permit one start from hot"),
         ),
+        alongside={"hot_cold_ratio": 0.2},
     ),
     Defect(
-        ("HM-602",),
+        lettered("F-303"),
         "heating_time_constant_s",
         Of("heating_time_constant_s", 1.5),
         (
             unsafe("thermal-beats-cold-stall", "trips from cold after the safe stall time"),
             unsafe("thermal-beats-hot-stall", "trips from hot after the safe stall time"),
+            unsafe("stall-is-covered", "no other element sees a rotor stalled while running"),
         ),
+        alongside={"cooling_time_constant_s": Of("cooling_time_constant_s", 1.5)},
     ),
     Defect(
-        ("CR-102",),
+        lettered("F-620"),
         "hot_cold_ratio",
         1.0,
-        (unsafe("thermal-beats-hot-stall", "no memory of the running load: trips from hot as late as from cold"),),
+        (
+            unsafe("thermal-beats-hot-stall", "no memory of the running load: trips from hot as late as from cold"),
+            unsafe("stall-is-covered", "no other element sees a rotor stalled while running"),
+        ),
     ),
     Defect(
         ("F-370",),
@@ -159,37 +167,39 @@ THERMAL = (
         lettered("P-120"),
         "overcurrent_trip_on",
         True,
-        (observation("element-doubled", "a 51 element trips before the thermal element"),),
+        (inconsistent("element-doubled", "a 51 element beside the thermal element trips before the start is over"),),
         alongside={
             "overcurrent_trip_pickup_a": 165.0,
             "overcurrent_curve": "iec_extremely_inverse",
-            "overcurrent_time_multiplier": 0.5,
+            "overcurrent_time_multiplier": 0.2,
         },
-    ),
-    Defect(
-        lettered("F-350"),
-        "start_timer_pickup_a",
-        Of("full_load_a", 3.0),
-        (observation("setting-typical-of-fleet", "3.0 x full load where the fleet has 1.4 x"),),
     ),
 )
 
 UNBALANCE = (
     Defect(
-        (*lettered("F-620"), *lettered("P-705")),
+        lettered("F-620"),
         "unbalance_trip_on",
         False,
         (unsafe("unbalance-trip-on", "fuse-fed: a blown fuse leaves two phases"),),
         alongside={"unbalance_trip_pickup_pct": None, "unbalance_trip_delay_s": None},
     ),
     Defect(
-        numbered("SC-", 601, 3),
+        lettered("P-705"),
         "unbalance_trip_on",
         False,
         (
             unsafe("unbalance-trip-on", "fuse-fed: a blown fuse leaves two phases"),
-            unsafe("open-phase-is-covered", "no other element of this relay sees an open phase"),
+            unsafe("open-phase-is-covered", "nor does the thermal element count negative-sequence current"),
+            observation("thermal-counts-unbalance", "the thermal element ignores negative-sequence current"),
         ),
+        alongside={"unbalance_trip_pickup_pct": None, "unbalance_trip_delay_s": None, "unbalance_weight": 0.0},
+    ),
+    Defect(
+        numbered("SC-", 601, 3),
+        "unbalance_trip_on",
+        False,
+        (unsafe("unbalance-trip-on", "fuse-fed: a blown fuse leaves two phases"),),
         alongside={"unbalance_trip_pickup_pct": None, "unbalance_trip_delay_s": None},
     ),
     Defect(
@@ -233,11 +243,8 @@ UNBALANCE = (
     Defect(
         ("CR-101",),
         "unbalance_trip_delay_s",
-        240.0,
-        (
-            unsafe("unbalance-delay-limits-heating", "four minutes on two phases"),
-            inconsistent("setting-unit-slip", "240 is 4 x 60: meant were 4 s"),
-        ),
+        36.0,
+        (unsafe("unbalance-delay-limits-heating", "36 s; 30 s at most"),),
     ),
 )
 

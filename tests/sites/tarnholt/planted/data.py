@@ -51,7 +51,10 @@ RELAY_DATA = (
         (unsafe("register-trip-reaches-output", "the earth-fault trip is assigned to no output"),),
     ),
     Defect(
-        ("P-150B",), "unbalance_trip_delay_s", 8.0, (observation("sisters-agree", "8 s; its sister P-150A has 4 s"),)
+        ("BC-104",),
+        "unbalance_trip_delay_s",
+        8.0,
+        (observation("sisters-agree", "8 s; its sisters have 4 s"),),
     ),
 )
 
@@ -90,7 +93,7 @@ MOTOR_DATA = (
         alongside={"safe_stall_cold_s": 19.0},
     ),
     Defect(
-        ("FD-303",),
+        ("FD-104",),
         "rated_voltage_v",
         430.0,
         (inconsistent("register-motor-voltage-fits-bus", "430 V on a 400 V bus"),),

@@ -10,7 +10,10 @@ OVERLOAD = (
         lettered("P-170"),
         "overload_device",
         "none",
-        (unsafe("overload-device-present", "a magnetic trip alone sees no overload"),),
+        (
+            unsafe("overload-device-present", "a magnetic trip alone sees no overload"),
+            unsafe("stall-is-covered", "nothing acts on a stalled rotor"),
+        ),
         table="motor",
         alongside=dict.fromkeys(
             (
@@ -48,7 +51,10 @@ OVERLOAD = (
         lettered("P-720"),
         "overload_trip_class",
         30.0,
-        (unsafe("overload-class-inside-stall", "may trip after the safe stall time"),),
+        (
+            unsafe("overload-class-inside-stall", "may trip after the safe stall time"),
+            unsafe("stall-is-covered", "no other element acts on a stalled rotor"),
+        ),
         table="motor",
     ),
     Defect(
@@ -62,7 +68,20 @@ OVERLOAD = (
         lettered("P-180", "ABC"),
         "earth_conductor_mm2",
         1.5,
-        (unsafe("magnetic-trip-sees-least-fault", "the earth-fault loop is too long for the trip"),),
+        (
+            unsafe("magnetic-trip-sees-least-fault", "the earth-fault loop is too long for the trip"),
+            inconsistent("range-not-empty", "no trip rides through the start and sees this fault"),
+        ),
+        table="motor",
+    ),
+)
+
+SPREAD = (
+    Defect(
+        ("MX-650",),
+        "magnetic_trip_a",
+        470.0,
+        (observation("setting-typical-of-fleet", "26 x full load where the fleet has 13 to 16 x"),),
         table="motor",
     ),
 )
@@ -86,7 +105,10 @@ PLANT = (
         lettered("P-110"),
         "ct_connected_burden_ohm",
         45.0,
-        (unsafe("ct-carries-short-circuit-pickup", "the CT saturates below twice the pickup"),),
+        (
+            unsafe("ct-carries-short-circuit-pickup", "the CT saturates below twice the pickup"),
+            inconsistent("range-not-empty", "no pickup rides through the start and is carried by this CT"),
+        ),
         table="motor",
     ),
     Defect(
@@ -148,4 +170,4 @@ BUSES = (
         table="bus",
     ),
 )
-LOW_VOLTAGE = (*OVERLOAD, *PLANT, *BUSES)
+LOW_VOLTAGE = (*OVERLOAD, *SPREAD, *PLANT, *BUSES)

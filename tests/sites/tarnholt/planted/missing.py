@@ -30,7 +30,7 @@ MISSING = (
     Missing("motor", ("KM-203",), "safe_stall_cold_s", "TBC", "asked of the maker"),
     Missing(
         "motor",
-        numbered("BC-", 201, 6),
+        numbered("SC-", 601, 3),
         "stated_start_time_at_lowest_voltage_s",
         "blank",
         "only the time at full voltage is stated",

@@ -81,6 +81,7 @@ STARTING = (
                 "thermal-beats-hot-stall", "set to let the long start through, nothing else guards the stalled motor"
             ),
             unsafe("stall-is-covered", "neither thermal element nor start timer acts in time"),
+            inconsistent("range-not-empty", "nothing rides through the start and acts within the stall time"),
         ),
         table="motor",
         alongside={"speed_switch_delay_s": None},
@@ -110,7 +111,7 @@ JAM = (
     Defect(
         numbered("BC-", 201, 6),
         "jam_block_s",
-        2.5,
+        2.0,
         (nuisance("jam-blocked-while-starting", "released before a slow start is over"),),
     ),
     Defect(
@@ -124,7 +125,12 @@ UNDERCURRENT = (
         "undercurrent_trip_on",
         False,
         (observation("undercurrent-on-for-dry-run", "a submersible pump cannot run dry"),),
-        alongside={"undercurrent_trip_pickup_a": None, "undercurrent_trip_delay_s": None, "undercurrent_block_s": None},
+        alongside={
+            "undercurrent_alarm_on": False,
+            "undercurrent_trip_pickup_a": None,
+            "undercurrent_trip_delay_s": None,
+            "undercurrent_block_s": None,
+        },
     ),
     Defect(
         lettered("F-310"),
@@ -147,6 +153,16 @@ UNDERCURRENT = (
 )
 
 VOLTAGE = (
+    Defect(
+        ("KM-203",),
+        "overvoltage_trip_pickup_v",
+        4200.0,
+        (
+            nuisance("overvoltage-pickup-above-bus", "the bus runs above it all the time"),
+            observation("overvoltage-pickup-near-hundred-ten", "far from the usual figure"),
+            inconsistent("setting-unit-slip", "110 % taken from phase to neutral: short of it by root three"),
+        ),
+    ),
     Defect(
         lettered("P-110"),
         "undervoltage_trip_on",

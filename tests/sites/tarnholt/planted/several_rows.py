@@ -72,8 +72,12 @@ def relay_named_twice(site: Site) -> list[Row]:
     site.motor("P-701C")["relay"] = "R-P701B"
     why = "P-701B and P-701C name the same relay"
     return [
-        _row(tag, "register-relay-serves-one-motor", "inconsistent", "relay", "R-P701B", sound, why)
+        _row(tag, check, severity, "relay", "R-P701B", sound, why)
         for tag, sound in (("P-701B", "R-P701B"), ("P-701C", "R-P701C"))
+        for check, severity in (
+            ("register-relay-serves-one-motor", "inconsistent"),
+            ("parallel-motors-own-overload", "unsafe"),
+        )
     ] + [
         _row(
             "P-701C",
