@@ -84,5 +84,5 @@ def _compared(sides: tuple[Side, Side], catalogue: Catalogue, packs: Sequence[st
         share_pct=share_pct,
         supposed=sides[1].supposed,
         notices=notices,
-        sources=tuple(f"{side.path} ({side.kind()})" for side in sides),
+        sources=(f"{sides[0].path} ({sides[0].kind()})", f"{sides[1].path} ({sides[1].kind()})"),
     )

@@ -10,6 +10,8 @@ from audit.findings.audit import Audit
 from audit.findings.comparison.alignment import Pair
 from audit.findings.comparison.chains import Chains
 from audit.findings.comparison.changes import Change, Changes, RowChange
+from audit.findings.comparison.impact_table import read_impact_table
+from audit.findings.comparison.looked_at import LookedAt, looked_at
 from audit.findings.comparison.moves import moves
 from audit.findings.comparison.provable import ProofChange, proofs
 from audit.findings.comparison.standing import STANDINGS, FindingChange, Standing, Standings
@@ -62,6 +64,7 @@ class Comparison:
     touched: tuple[Touched, ...]
     no_longer_provable: tuple[ProofChange, ...]
     provable_now: tuple[ProofChange, ...]
+    looked_at: tuple[LookedAt, ...]
 
     def standing_counts(self) -> dict[Standing, int]:
         """Count the findings by how they stand."""
@@ -71,7 +74,8 @@ class Comparison:
     def is_empty(self) -> bool:
         """Tell whether there is no news at all."""
         news = any(finding.standing != "still there" for finding in self.findings)
-        parts = (self.changed, self.rows, self.starts, self.touched, self.no_longer_provable, self.provable_now)
+        proofs = (self.no_longer_provable, self.provable_now)
+        parts = (self.changed, self.rows, self.starts, self.touched, self.looked_at, *proofs)
         return not news and not any(parts)
 
 
@@ -105,6 +109,7 @@ def compare(
         touched=touched(pair, changes, chains, moved),
         no_longer_provable=lost,
         provable_now=won,
+        looked_at=looked_at(pair, changes.values, changes.rows, read_impact_table(after.catalogue)),
     )
 
 

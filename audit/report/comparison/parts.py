@@ -39,6 +39,8 @@ def comparison_part(comparison: Comparison) -> dict[str, Any]:
             "touched": len(comparison.touched),
             "no_longer_provable": len(comparison.no_longer_provable),
             "provable_now": len(comparison.provable_now),
+            "looked_at": sum(len(one.names) for one in comparison.looked_at),
+            "by_hand": sum(not one.names for one in comparison.looked_at),
         },
         "changed": [_change(change) for change in comparison.changed],
         "rows": [asdict(row) for row in comparison.rows],
@@ -48,6 +50,7 @@ def comparison_part(comparison: Comparison) -> dict[str, Any]:
         "touched": [_touched(one) for one in comparison.touched],
         "no_longer_provable": _proofs(comparison.no_longer_provable),
         "provable_now": _proofs(comparison.provable_now),
+        "looked_at": [asdict(one) for one in comparison.looked_at],
     }
 
 

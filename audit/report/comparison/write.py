@@ -8,6 +8,7 @@ from pathlib import Path
 from audit.findings.comparison import Comparison
 from audit.report.atomic import whole_file
 from audit.report.comparison.parts import comparison_part
+from audit.report.comparison.workbook import write_workbook
 
 
 def write_comparison(comparison: Comparison, folder: Path) -> list[Path]:
@@ -17,4 +18,6 @@ def write_comparison(comparison: Comparison, folder: Path) -> list[Path]:
     with whole_file(record) as stream:
         json.dump(comparison_part(comparison), stream, ensure_ascii=False, allow_nan=False, indent=1)
         stream.write("\n")
-    return [record]
+    workbook = folder / "comparison.xlsx"
+    write_workbook(comparison, workbook)
+    return [record, workbook]

@@ -15,12 +15,15 @@ from audit.cautions import SHORT_CAUTION
 from audit.findings.comparison import Comparison
 from audit.findings.comparison.chains import Chain, chain_words
 from audit.findings.comparison.changes import Change
+from audit.findings.comparison.looked_at import BY_HAND, LookedAt
 from audit.findings.comparison.provable import ProofChange
 from audit.findings.comparison.standing import FindingChange
 from audit.report.terminal.style import WIDE, counted, severity_word
 
 MOST_LINES = 30
 MOST_NAMES = 4
+SILENT = ("looked at, no action", "looked at, does not apply")
+"""What needs nobody's attention is counted; the workbook lists it for the signature."""
 
 
 def show_comparison(
@@ -32,6 +35,7 @@ def show_comparison(
     shown.findings(comparison)
     shown.proofs("No longer provable", comparison.no_longer_provable)
     shown.touched(comparison)
+    shown.looked_at(comparison)
     console.print()
     console.rule(style="default")
     _summary(comparison, console)
@@ -148,6 +152,27 @@ class Printer:
             lines += len(rows)
             self.table(("of", "what moved", "before", "after", "over"), rows)
 
+    def looked_at(self, comparison: Comparison) -> None:
+        """Print what has to be looked at again, change by change, with its verdicts."""
+        pairs = sum(len(one.names) for one in comparison.looked_at)
+        by_hand = sum(not one.names for one in comparison.looked_at)
+        if not comparison.looked_at:
+            return
+        self.heading(f"Looked at because of the changes · {counted(pairs, 'verdict')}, {by_hand:,} by hand")
+        for _, group in groupby(comparison.looked_at, key=lambda one: (one.change, one.subject, one.name)):
+            entries = list(group)
+            self.console.print(Text(f"  {entries[0].subject} {entries[0].name}: {entries[0].change_says}", "bold"))
+            told: dict[str, int] = {}
+            for one in entries:
+                told[one.action] = told.get(one.action, 0) + max(len(one.names), 1)
+            self.console.print(Text("    " + "; ".join(f"{number:,} {action}" for action, number in told.items())))
+            self.table(("check", "verdict", "of"), [_open_line(one) for one in entries if one.action not in SILENT])
+
+
+def _open_line(one: LookedAt) -> tuple[str, str, str]:
+    names = ", ".join(one.names[:MOST_NAMES]) + (f" … ({len(one.names)} in all)" if len(one.names) > MOST_NAMES else "")
+    return one.check, one.verdict or BY_HAND, names or f"{one.at}: {one.why}"
+
 
 def _because(chain: Chain) -> str:
     return f" ({' -> '.join(chain_words(chain))})" if chain else ""
@@ -167,6 +192,8 @@ def _summary(comparison: Comparison, console: Console) -> None:
         (len(comparison.changed), "data and settings changed"),
         (len(comparison.rows), "motors, relays and buses added or removed"),
         *((number, f"findings {standing}") for standing, number in comparison.standing_counts().items()),
+        (sum(len(one.names) for one in comparison.looked_at), "verdicts looked at because of the changes"),
+        (sum(not one.names for one in comparison.looked_at), "things to be looked at by hand"),
         (len(comparison.no_longer_provable), "verdicts that can no longer be given"),
         (len({(one.subject, one.name) for one in comparison.touched}), "motors, relays, buses and groups touched"),
     )

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from openpyxl.styles import Border, Font, Side
 from openpyxl.worksheet.worksheet import Worksheet
 
@@ -11,6 +13,31 @@ from audit.report.record.parts import tool_version
 from audit.report.terminal.style import MEANING
 from audit.report.workbook.sheets.layout import FILLS, LETTERS, fill, page, put, title
 
+HOW_TO_FILL_IN = [
+    (
+        "the engineer",
+        "writes ISSUED VALUE in the unit and base of the export, as the column beside it names them, with name, "
+        "revision and date. The cell 'judged' must say that it lies inside the range. A row that is held back gets "
+        "no value until the datum that it names is settled.",
+    ),
+    (
+        "the contractor",
+        "sets the issued value and nothing else. AS-FOUND before, AS-LEFT after, each read from the relay: the number "
+        "alone, its unit in the column 'unit'. A notice appears where something does not agree; at STOP AND RING no "
+        "setting is changed before the engineer has answered. A row that cannot be done stays empty, with a remark.",
+    ),
+    (
+        "afterwards",
+        "read the settings of the relay into a file and name it. Return this workbook with that file; rows may be "
+        "sorted and filtered, not deleted. What is not locked is open to both; the rest is protected without a "
+        "password, against slips.",
+    ),
+    (
+        "the formulas",
+        "use common functions only and were tried in LibreOffice; for other programs they are valid by "
+        "the schema of the format.",
+    ),
+]
 _LINE = Side(style="thin", color="3B4A54")
 
 
@@ -22,17 +49,18 @@ def write_cover(audit: Audit, sheet: Worksheet) -> None:
     )
     for column, width in zip("ABCD", (26, 22, 52, 40), strict=True):
         sheet.column_dimensions[column].width = width
-    row = _pairs(sheet, row, "Scope", _scope(audit))
-    row = _pairs(sheet, row, "Verdicts", _verdicts(audit))
+    row = pairs(sheet, row, "Scope", _scope(audit))
+    row = pairs(sheet, row, "Verdicts", _verdicts(audit))
     row = _severities(audit, sheet, row)
-    row = _pairs(sheet, row, "Cautions", [("", caution) for caution in CAUTIONS])
-    row = _pairs(sheet, row, "Input files", [(item.file, f"sha256 {item.sha256}") for item in fleet.inputs])
+    row = pairs(sheet, row, "Cautions", [("", caution) for caution in CAUTIONS])
+    row = pairs(sheet, row, "How to fill in the sheet 'Work'", HOW_TO_FILL_IN)
+    row = pairs(sheet, row, "Input files", [(item.file, f"sha256 {item.sha256}") for item in fleet.inputs])
     changes = [
         (change.kind, f"{change.name}{f': {change.was} -> {change.now}' if change.was else ''} ({change.reason})")
         for change in audit.catalogue.changes
     ]
-    row = _pairs(sheet, row, "Rules", [("version", tool_version()), *(changes or [("site rules", "none")])])
-    _sign_off(sheet, row)
+    row = pairs(sheet, row, "Rules", [("version", tool_version()), *(changes or [("site rules", "none")])])
+    sign_off(sheet, row)
     page(sheet, fleet.site, pages_high=1)
 
 
@@ -64,9 +92,10 @@ def _verdicts(audit: Audit) -> list[tuple[str, str]]:
     ]
 
 
-def _pairs(sheet: Worksheet, row: int, heading: str, pairs: list[tuple[str, str]]) -> int:
+def pairs(sheet: Worksheet, row: int, heading: str, told: Sequence[tuple[str, str]]) -> int:
+    """Write a heading and names with texts below it; give the next free row."""
     put(sheet, row, 1, heading, bold=True)
-    for name, text in pairs:
+    for name, text in told:
         row += 1
         put(sheet, row, 1, name)
         put(sheet, row, 2, text, wrap=True)
@@ -88,11 +117,12 @@ def _severities(audit: Audit, sheet: Worksheet, row: int) -> int:
     return row + 2
 
 
-def _sign_off(sheet: Worksheet, row: int) -> None:
+def sign_off(sheet: Worksheet, row: int, roles: Sequence[str] = ("prepared", "checked", "approved")) -> None:
+    """Write the lines on which people sign."""
     put(sheet, row, 1, "Sign-off", bold=True)
     for column, heading in enumerate(("", "name", "signature", "date"), start=1):
         put(sheet, row + 1, column, heading).font = Font(name="Calibri", size=9, italic=True)
-    for offset, role in enumerate(("prepared", "checked", "approved"), start=2):
+    for offset, role in enumerate(roles, start=2):
         put(sheet, row + offset, 1, role)
         sheet.row_dimensions[row + offset].height = 24
         for column in range(1, 5):
