@@ -73,9 +73,7 @@ class Movements:
                     found.append(line)
         if len(lows) > 1 or len(highs) > 1:
             return MovingEnds(again=True, words=self._words[setting])
-        return MovingEnds(
-            lows[0] if lows else None, highs[0] if highs else None, words=self._words[setting]
-        )
+        return MovingEnds(lows[0] if lows else None, highs[0] if highs else None, words=self._words[setting])
 
     def _tabulated(self, setting: str) -> dict[str, tuple[Floats, Floats, Floats]]:
         """For each other setting: its present values, and both ends at multiples of them."""

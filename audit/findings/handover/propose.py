@@ -41,7 +41,7 @@ def propose_number(
     number = _on_step(written.number_for(target), written.step, up=raise_it)
     if not inside(written.primary(number), low, high):
         number = _on_step(written.number_for(target), written.step, up=not raise_it)
-    if not inside(written.primary(number), low, high):
+    if not inside(written.primary(number), low, high) or number == written.number:
         return Proposal(None, f"none: no step of {written.step:g} lies inside the range")
     side = "low" if raise_it else "high"
     shown = f"{plain_number(end)} {symbol}".strip()

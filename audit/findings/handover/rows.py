@@ -1,4 +1,4 @@
-"""The rows of the hand-over: each finding whose remedy is a setting of a relay, with what to set and how it is judged."""
+"""The rows of the hand-over: each finding whose remedy is a setting of a relay, what to set, and how it is judged."""
 
 from __future__ import annotations
 
@@ -13,7 +13,7 @@ from audit.checks.verdicts import UNPROVEN, Outcome, data_lacking
 from audit.findings.audit import Audit
 from audit.findings.collect import label_of
 from audit.findings.finding import Finding, FindingCode
-from audit.findings.handover.moving import MovingEnds, Movements
+from audit.findings.handover.moving import Movements, MovingEnds
 from audit.findings.handover.propose import Proposal, propose_number, propose_switch
 from audit.findings.handover.written import WrittenSetting, WrittenSettings
 from audit.fleet.column import NO_ROW

@@ -12,18 +12,27 @@ from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.findings.audit import Audit
 from audit.findings.finding import Finding
+from audit.findings.handover.rows import work_rows
 from audit.findings.render import FindingRenderer
 from audit.report.workbook.marks import marks_by_file
-from audit.report.workbook.patch import CannotPatch, annotate_copy, names_for_report
+from audit.report.workbook.patch import (
+    CannotPatch,
+    SavedValue,
+    SavedValues,
+    annotate_copy,
+    names_for_report,
+    save_with_values,
+)
 from audit.report.workbook.sheets.cover import write_cover
 from audit.report.workbook.sheets.findings import write_findings
 from audit.report.workbook.sheets.lists import write_checks, write_data_to_collect, write_inputs
 from audit.report.workbook.sheets.motors import write_motors
 from audit.report.workbook.sheets.ranges import write_ranges
+from audit.report.workbook.sheets.work import write_work
 
-COVER, FINDINGS, MOTORS, RANGES = "Audit", "Findings", "Motors", "Ranges"
+COVER, FINDINGS, WORK, MOTORS, RANGES = "Audit", "Findings", "Work", "Motors", "Ranges"
 DATA, INPUTS, CHECKS = "Data to collect", "Inputs", "Checks applied"
-SHEETS = (COVER, FINDINGS, MOTORS, RANGES, DATA, INPUTS, CHECKS)
+SHEETS = (COVER, FINDINGS, WORK, MOTORS, RANGES, DATA, INPUTS, CHECKS)
 PATCHABLE = (".xlsx", ".xlsm")
 
 
@@ -33,6 +42,14 @@ class WrittenWorkbook:
 
     path: Path
     remark: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class BuiltSheets:
+    """Our sheets, and the values of their formulas."""
+
+    book: Workbook
+    values: SavedValues
 
 
 def write_workbooks(audit: Audit, folder: Path) -> list[WrittenWorkbook]:
@@ -52,8 +69,9 @@ def write_workbooks(audit: Audit, folder: Path) -> list[WrittenWorkbook]:
                 if source.suffix.casefold() not in PATCHABLE:
                     raise CannotPatch(f"{source.suffix} files cannot be marked without loss")
                 names = names_for_report(source, SHEETS)
-                build_sheets(audit, findings, item.file, names, whole=item.file == motor_file).save(report)
-                annotate_copy(source, target, marks.get(item.file, []), report)
+                built = build_sheets(audit, findings, item.file, names, whole=item.file == motor_file)
+                built.book.save(report)
+                annotate_copy(source, target, marks.get(item.file, []), report, formulas=built.values)
                 written.append(WrittenWorkbook(target))
             except CannotPatch as reason:
                 written += _apart(audit, findings, item.file, motor_file, folder, str(reason))
@@ -67,7 +85,8 @@ def _apart(
     if file != motor_file:
         return [WrittenWorkbook(folder / file, f"no marked copy of {file}: {reason}; see the findings sheet")]
     target = folder / "findings.xlsx"
-    build_sheets(audit, findings, "", {}, whole=True).save(target)
+    built = build_sheets(audit, findings, "", {}, whole=True)
+    save_with_values(built.book, target, built.values)
     return [WrittenWorkbook(target, f"no marked copy of {file}: {reason}; our sheets stand in a workbook of their own")]
 
 
@@ -82,7 +101,7 @@ def _motor_file(audit: Audit) -> str:
 
 def build_sheets(
     audit: Audit, findings: Sequence[Finding], own_file: str, names: Mapping[str, str], *, whole: bool
-) -> Workbook:
+) -> BuiltSheets:
     """Build our sheets for one workbook: all of them for the motor list, cover and findings for the others.
 
     `names` gives the sheet names that are free in the workbook that they go into.
@@ -97,10 +116,13 @@ def build_sheets(
 
     write_cover(audit, sheet(COVER))
     write_findings(findings, sheet(FINDINGS), audit.fleet.site, own_file)
+    values: dict[str, dict[str, SavedValue]] = {}
     if whole:
+        work = sheet(WORK)
+        values[work.title] = write_work(audit, work_rows(audit, findings), work, own_file)
         write_motors(audit, list(findings), sheet(MOTORS))
         write_ranges(audit, sheet(RANGES))
         write_data_to_collect(audit, sheet(DATA))
         write_inputs(audit, sheet(INPUTS))
         write_checks(audit, sheet(CHECKS))
-    return book
+    return BuiltSheets(book, values)
