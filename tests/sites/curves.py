@@ -4,6 +4,8 @@ from __future__ import annotations
 
 import math
 
+import numpy as np
+
 from tests.sites.machine import Machine
 from tests.sites.plant import Record, number
 
@@ -44,6 +46,13 @@ def melting_curve(rating_a: float) -> str:
 def clearing_curve(rating_a: float) -> str:
     """Total clearing curve of the same fuse."""
     return as_points([(multiple * rating_a, time * CLEARING_OVER_MELTING + ARCING_S) for multiple, time in MELTING])
+
+
+def clearing_time_s(rating_a: float, current_a: float) -> float:
+    """Total clearing time of the fuse at a current, straight between its points on logarithmic scales."""
+    multiples, times = zip(*MELTING, strict=True)
+    melting = math.exp(float(np.interp(math.log(current_a / rating_a), np.log(multiples), np.log(times))))
+    return melting * CLEARING_OVER_MELTING + ARCING_S
 
 
 def limit_curves(machine: Machine, motor: Record) -> Record:

@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from datetime import date
 
 from tests.sites.current_transformers import told_to_relay
+from tests.sites.curves import clearing_time_s
 from tests.sites.notation import LAYOUTS, in_steps
 from tests.sites.plant import Record, number, text
 from tests.sites.rounding import up
@@ -217,10 +218,20 @@ def _earth_fault(setter: Setter, bus: Record, greatest_a: float) -> None:
         setter.put("earth_fault_trip_delay_s", 0.5)
     elif kind == "core_balance":
         setter.put("earth_fault_trip_pickup_a", max(10.0, 0.175 * number(motor, "full_load_a")), "down")
-        setter.put("earth_fault_trip_delay_s", 0.2)
+        setter.put("earth_fault_trip_delay_s", _after_the_fuse(motor, 0.2), "up")
     else:
         setter.put("earth_fault_trip_pickup_a", max(0.21 * number(motor, "full_load_a"), 0.03 * greatest_a))
         setter.put("earth_fault_trip_delay_s", 0.25)
+
+
+def _after_the_fuse(motor: Record, usual_s: float) -> float:
+    """Delay after which the fuse has cleared every earth fault that the contactor could not break."""
+    if motor["switching_device"] != "fused_contactor":
+        return usual_s
+    cleared = clearing_time_s(number(motor, "fuse_rating_a"), 1e3 * number(motor, "interrupting_rating_ka"))
+    if 1.3 * cleared > 0.35:
+        raise ValueError(f"{motor['motor']}: the fuse takes {cleared:.2f} s at the limit of its contactor")
+    return max(usual_s, 1.3 * cleared)
 
 
 def _differential(setter: Setter, greatest_a: float) -> None:

@@ -44,13 +44,20 @@ def motor_truth(site: Site) -> dict[str, Record]:
 
 
 def setting_truth(site: Site) -> dict[str, Record]:
-    """Give for each motor tag the primary settings of its relay's active group, or of its overload device."""
+    """Give for each motor tag the primary settings of its relay's active group, or of its overload device.
+
+    A value whose unit the export leaves out, though several are possible, is left out.
+    """
     relays = {text(relay, "relay_tag"): relay for relay in site.relays if relay.get("group_active", True)}
     truth: dict[str, Record] = {}
     for motor in site.motors:
         own: Record = {name: motor[name] for name in OF_OVERLOAD_RELAY if name in motor}
         relay = relays.get(str(motor.get("relay", "")), {})
-        switched = {name: value for name, value in relay.items() if name not in ("layout", "motor", "relay_tag")}
+        switched = {
+            name: value for name, value in relay.items() if name not in ("layout", "motor", "relay_tag", "without_unit")
+        }
+        if "without_unit" in relay:
+            switched.pop(text(relay, "without_unit"))
         truth[text(motor, "motor")] = own | switched
     return truth
 

@@ -73,7 +73,17 @@ FAMILIES_690 = (
 )
 
 FAMILIES_RELAY = (
-    Family(lettered("P-140"), "Wash plant pump", QUARRY, "pump", "MCC-41", 90, 4, facts=STARTS, **RELAY),
+    Family(
+        lettered("P-140"),
+        "Wash plant pump",
+        QUARRY,
+        "pump",
+        "MCC-41",
+        90,
+        4,
+        facts=STARTS,
+        **(RELAY | {"earth_ct": "core_balance"}),
+    ),
     Family(
         lettered("P-150"),
         "Thickener underflow pump",
@@ -143,7 +153,7 @@ FAMILIES_RELAY = (
         inertia=0.16,
         least_loading=0.65,
         facts=STARTS | {"cannot_run_dry": True},
-        **RELAY,
+        **(RELAY | {"earth_ct": "core_balance"}),
     ),
     Family(
         ("F-370",),

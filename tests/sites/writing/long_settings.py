@@ -95,6 +95,10 @@ ALARMS = {
 }
 
 
+WITHOUT_UNIT = ("jam_trip_delay_s",)
+"""This export leaves the unit of these delays out: they are seconds, as everywhere in it."""
+
+
 def write_long_settings(site: Site, path: Path) -> None:
     """Write the workbook with all relays of the 'lv_long' kind."""
     relays = [relay for relay in site.relays if relay["layout"] == "lv_long"]
@@ -145,6 +149,8 @@ def relay_lines(relay: Record, motor: Record) -> list[tuple[object, object, obje
             if quantity in relay:
                 written = notation[quantity]
                 unit = {"minutes": "min", "": None}.get(written.unit, written.unit)
+                if quantity in WITHOUT_UNIT or quantity == relay.get("without_unit"):
+                    unit = None
                 lines.append((function, words, as_written(number(relay, quantity), written, relay, motor), unit))
         if element in ALARMS and f"{element}_alarm_on" in relay:
             lines.append((*ALARMS[element], "ON" if relay[f"{element}_alarm_on"] else "OFF", None))

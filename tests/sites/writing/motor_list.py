@@ -91,8 +91,10 @@ def _write_area(sheet: Worksheet, site: Site, area: str, *, unit_row: bool) -> N
     _page(sheet, row)
     voltage = 0.0
     for motor in motors:
-        if number(motor, "rated_voltage_v") != voltage:
-            voltage = number(motor, "rated_voltage_v")
+        rated = number(motor, "rated_voltage_v")
+        nominal = min((number(bus, "bus_nominal_v") for bus in site.buses), key=lambda level: abs(level / rated - 1))
+        if nominal != voltage:
+            voltage = nominal
             heading = sheet.cell(row, 1, f"{voltage / 1000:g} kV MOTORS" if voltage > 1000 else f"{voltage:g} V MOTORS")
             heading.font = Font(bold=True)
             for place in range(1, len(columns) + 1):

@@ -60,6 +60,14 @@ RELAY_DATA = (
 
 MOTOR_DATA = (
     Defect(
+        ("VS-110A",),
+        "frequency_hz",
+        60.0,
+        (inconsistent("frequency-fits-bus", "a 60 Hz motor of 400 V on 50 Hz: a fifth too much flux"),),
+        table="motor",
+        alongside={"rated_speed_rpm": 1764.0},
+    ),
+    Defect(
         ("FD-302",),
         "full_load_a",
         Of("full_load_a", 1.341),

@@ -183,6 +183,17 @@ def limit_curve_dented(site: Site) -> list[Row]:
     return [_row("KM-202", "thermal-under-limit-curve", "unsafe", "hot_limit_curve", as_points(lowered), sound, why)]
 
 
+def unit_left_out(site: Site) -> list[Row]:
+    """Write a pickup as a bare number, without saying of what it is a multiple."""
+    relay = site.relay_of("SC-602")
+    relay["without_unit"] = "start_timer_pickup_a"
+    multiple = number(relay, "start_timer_pickup_a") / number(relay, "relay_full_load_a")
+    why = "neither a unit nor a base stands beside the number"
+    return [
+        _row("SC-602", "setting-base-stated", "inconsistent", "start_timer_pickup_a", f"{multiple:.1f}", "x FLA", why)
+    ]
+
+
 SEVERAL_ROWS = (
     tag_twice,
     relay_without_settings,
@@ -195,4 +206,5 @@ SEVERAL_ROWS = (
     ct_too_large,
     same_jam_pickup,
     limit_curve_dented,
+    unit_left_out,
 )
