@@ -10,12 +10,13 @@ from contextlib import contextmanager
 from dataclasses import dataclass
 from pathlib import Path
 
-from python_calamine import CalamineError, CalamineWorkbook, SheetTypeEnum, SheetVisibleEnum
+from python_calamine import CalamineError, CalamineSheet, CalamineWorkbook, SheetTypeEnum, SheetVisibleEnum
 
-from audit.intake.cells import CellValue
+from audit.intake.cells import CellError, CellValue
 from audit.intake.opening.kinds import damaged, encrypted
 
 STANDARD_ERROR = 2
+ENDLESS_TIME = CellError("a time beyond all limits in this row")
 
 
 @dataclass(frozen=True)
@@ -36,6 +37,9 @@ def read_sheets(path: Path, data: bytes, skip: Collection[str] = ()) -> list[Raw
     except CalamineError as error:
         if "password" in str(error).lower():
             raise encrypted(path) from error
+        raise damaged(path, str(error)) from error
+    except OSError as error:
+        # the bytes lie in memory: what ends early is a part of the workbook
         raise damaged(path, str(error)) from error
     except BaseException as error:
         # a panic of the reader arrives as an exception outside Exception that cannot be imported by name
@@ -70,10 +74,7 @@ def _read_sheets(data: bytes, skip: Collection[str]) -> list[RawSheet]:
             if metadata.typ != SheetTypeEnum.WorkSheet or metadata.name in skip:
                 continue
             sheet = workbook.get_sheet_by_name(metadata.name)
-            rows: list[list[CellValue]] = [
-                [None if value == "" else value for value in row] if "" in row else list(row)
-                for row in sheet.to_python(skip_empty_area=False)
-            ]
+            rows = _rows(sheet)
             sheets.append(
                 RawSheet(
                     name=metadata.name,
@@ -86,3 +87,30 @@ def _read_sheets(data: bytes, skip: Collection[str]) -> list[RawSheet]:
                 )
             )
     return sheets
+
+
+def _rows(sheet: CalamineSheet) -> list[list[CellValue]]:
+    try:
+        return [
+            [None if value == "" else value for value in row] if "" in row else list(row)
+            for row in sheet.to_python(skip_empty_area=False)
+        ]
+    except OverflowError:
+        return _rows_one_by_one(sheet)
+
+
+def _rows_one_by_one(sheet: CalamineSheet) -> list[list[CellValue]]:
+    """Rows of a sheet with a span of time that no program can show: its row is marked, the others are read."""
+    height, width = (sheet.end[0] + 1, sheet.end[1] + 1) if sheet.end else (0, 0)
+    rows: list[list[CellValue]] = []
+    remaining = sheet.iter_rows()
+    while True:
+        try:
+            values: list[CellValue] = [None if value == "" else value for value in next(remaining)]
+        except StopIteration:
+            break
+        except OverflowError:
+            values = [ENDLESS_TIME] * width
+        # these rows may leave out empty columns, and empty rows at the top, that come before all content
+        rows.append([None] * (width - len(values)) + values)
+    return [[None] * width for _ in range(height - len(rows))] + rows

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import hashlib
-from datetime import date, datetime
+from datetime import date, datetime, timedelta
 
 import openpyxl
 import pytest
@@ -182,3 +182,19 @@ def test_a_percent_sign_counts_only_where_it_multiplies(code, percent, tmp_path)
     book.active["A1"].number_format = code
     book.save(tmp_path / "one.xlsx")
     assert bool(open_workbook(tmp_path / "one.xlsx").sheets[0].percent_cells.size) is percent
+
+
+def test_a_span_of_time_beyond_all_limits_spoils_its_own_row_only(tmp_path):
+    book = openpyxl.Workbook()
+    sheet = book.active
+    sheet["B2"], sheet["C2"] = "Tag", "Stall time"
+    sheet["B3"], sheet["C3"] = "P-101", 1e10
+    sheet["B4"], sheet["C4"] = "P-102", 0.5
+    for cell in ("C3", "C4"):
+        sheet[cell].number_format = "[h]:mm:ss"
+    book.save(tmp_path / "one.xlsx")
+    rows = open_workbook(tmp_path / "one.xlsx").sheets[0].rows
+    assert rows[0] == [None, None, None]
+    assert rows[1] == [None, "Tag", "Stall time"]
+    assert all(isinstance(value, CellError) for value in rows[2])
+    assert rows[3] == [None, "P-102", timedelta(hours=12)]
