@@ -113,4 +113,5 @@ def _rows_one_by_one(sheet: CalamineSheet) -> list[list[CellValue]]:
             values = [ENDLESS_TIME] * width
         # these rows may leave out empty columns, and empty rows at the top, that come before all content
         rows.append([None] * (width - len(values)) + values)
-    return [[None] * width for _ in range(height - len(rows))] + rows
+    above: list[list[CellValue]] = [[None] * width for _ in range(height - len(rows))]
+    return above + rows
