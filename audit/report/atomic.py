@@ -5,13 +5,15 @@ from __future__ import annotations
 import os
 import tempfile
 from collections.abc import Callable, Iterator
-from contextlib import contextmanager
+from contextlib import AbstractContextManager, contextmanager
 from pathlib import Path
 from typing import IO
 
 
 @contextmanager
-def whole_file(target: Path, opened: Callable[[Path], IO[str]] | None = None) -> Iterator[IO[str]]:
+def whole_file(
+    target: Path, opened: Callable[[Path], AbstractContextManager[IO[str]]] | None = None
+) -> Iterator[IO[str]]:
     """Open a text file that takes its place only when everything was written."""
     target.parent.mkdir(parents=True, exist_ok=True)
     handle, name = tempfile.mkstemp(prefix=".writing-", dir=target.parent)

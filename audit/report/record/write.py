@@ -7,6 +7,7 @@ import gzip
 import io
 import json
 from collections.abc import Iterable, Iterator, Mapping
+from contextlib import contextmanager
 from pathlib import Path
 from typing import IO, Any
 
@@ -41,10 +42,15 @@ def write_record(audit: Audit, folder: Path) -> list[Path]:
     return [record, table, readings, values]
 
 
-def _gzip(path: Path) -> IO[str]:
+@contextmanager
+def _gzip(path: Path) -> Iterator[IO[str]]:
     # no file name and no time in the header, so that the same readings give the same bytes
-    raw = gzip.GzipFile(filename="", fileobj=path.open("wb"), mode="wb", mtime=0, compresslevel=6)
-    return io.TextIOWrapper(raw, encoding="utf-8", newline="")
+    with (
+        path.open("wb") as file,
+        gzip.GzipFile(filename="", fileobj=file, mode="wb", mtime=0, compresslevel=6) as packed,
+        io.TextIOWrapper(packed, encoding="utf-8", newline="") as stream,
+    ):
+        yield stream
 
 
 def write_json(audit: Audit, stream: IO[str]) -> None:
