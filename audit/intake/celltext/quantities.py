@@ -4,16 +4,14 @@ from __future__ import annotations
 
 import math
 import re
-from functools import lru_cache
 
+from audit.intake.celltext.beside import unit_and_qualifier
 from audit.intake.celltext.characters import plain
 from audit.intake.celltext.numerals import NUMERAL, numeral_values
 from audit.intake.celltext.reading import MISSING, CellKind, CellReading
 from audit.intake.celltext.words import SAYS_ON, folded, kind_of_word, refers_to_a_note
 
 LONGEST_TEXT = 120
-LONGEST_UNIT = 24
-BASES = "fla|flc|in|i_n|ib|ir|ie|iref|ct|ict|un|vn|ul|pn"
 
 _RELATION = re.compile(
     r"(?P<sign><=|>=|=<|=>|<|>|~)\s*|(?P<most>max(?:imum|\.)?|up to|at most)[ :=]*(?=[\d.,+-])"
@@ -41,18 +39,6 @@ _RANGE = re.compile(
 )
 _NEXT_VALUE = re.compile(r"\s*(?:/|\n|;|\||&|\band\b|,\s)\s*(?=[-+<>~]?\s?[.,]?\d)")
 _PAIR = re.compile(rf"(?P<first>{NUMERAL})\s*:\s*(?P<second>{NUMERAL}.*)")
-_TOLERANCE = re.compile(
-    r"(?P<unit>.*?)\s*(?P<tolerance>(?:\+\s?/\s?-|-\s?/\s?\+|±)\s*\d+(?:[.,]\d+)?\s*%?|[-+]\s*\d+(?:[.,]\d+)?\s*%)"
-)
-_BRACKETS = re.compile(r"(?P<unit>.*?)\s*(?P<brackets>[\[({].*[\])}])", re.DOTALL)
-_MARKS = re.compile(r"(?P<unit>.*?)\s*(?P<marks>[*†‡]+|\bapprox\.?|\best\.?|\bcalc\.?|\bmeas\.?)")
-_STATE = re.compile(
-    r"(?P<unit>|s|sec|secs|seconds?|min|ms)\s*[-,]?\s*(?P<state>hot|cold|warm|(?<=[a-z] )[hc])", re.IGNORECASE
-)
-_MULTIPLE = re.compile(r"(?:x|\*|times)\s*(?:of\s+)?(?P<base>.*)", re.IGNORECASE)
-_PER_CENT = re.compile(r"(?:%|pct|percent|per cent)\s*(?:of\s+|x\s+)?(?P<base>.*)", re.IGNORECASE)
-_BARE_BASE = re.compile(BASES, re.IGNORECASE)
-_UNIT = re.compile(r"(?:(?:1/)?[^\W\d_][\w%°/^.·*²³√\"' -]*|[°%√ΔΩ\"'].*)?")
 _SECONDS = {"h": 3600.0, "hr": 3600.0, "hrs": 3600.0, "min": 60.0, "m": 60.0}
 
 WRITE_A_NUMBER = "write one number, with its unit if it is not that of the column, or leave the cell empty"
@@ -109,7 +95,7 @@ def _special(text: str, written: str) -> CellReading | None:
     if match:
         whole = float(match.groupdict().get("whole") or 0)
         number = whole + int(match["top"]) / int(match["bottom"])
-        unit, qualifier = _unit_and_qualifier(match["rest"].strip())
+        unit, qualifier = unit_and_qualifier(match["rest"].strip())
         if unit is not None:
             return CellReading(CellKind.NUMBER, number, unit, text, qualifier=qualifier)
     match = _KILO_FOR_POINT.fullmatch(written)
@@ -157,7 +143,7 @@ def _single(text: str, value: str, relation: str, decimal_comma: bool | None) ->
         if folded(value) in SAYS_ON:
             return _bad(text, f"'{value}' says that the function is on, not its value; {WRITE_A_NUMBER}")
         return _bad(text, f"'{_short(value)}' is not a number; {WRITE_A_NUMBER}")
-    unit, qualifier = _unit_and_qualifier(match["rest"].strip())
+    unit, qualifier = unit_and_qualifier(match["rest"].strip())
     values = numeral_values(match["numeral"], decimal_comma)
     if unit is None or not values or not all(map(math.isfinite, values)):
         return _bad(text, f"'{_short(value)}' is not a number with a unit; {WRITE_A_NUMBER}")
@@ -197,39 +183,6 @@ def _remark(numeral: str, number: float, relation: str, qualifier: str) -> str:
     if qualifier:
         remarks.append(f"'{qualifier}' stands beside the value")
     return "; ".join(remarks)
-
-
-@lru_cache(maxsize=4096)
-def _unit_and_qualifier(rest: str) -> tuple[str | None, str]:
-    """Unit in one spelling and what stands beside it; None where the rest is no unit."""
-    qualifiers: list[str] = []
-    unit, at, condition = rest.partition("@")
-    if at:
-        qualifiers.append(f"@ {condition.strip()}")
-    unit = unit.strip()
-    for pattern, group in (
-        (_BRACKETS, "brackets"),
-        (_MARKS, "marks"),
-        (_TOLERANCE, "tolerance"),
-        (_STATE, "state"),
-    ):
-        match = pattern.fullmatch(unit)
-        if match:
-            qualifiers.insert(0, match[group])
-            unit = match["unit"].strip()
-    qualifier = " ".join(qualifiers)
-    unit = unit.rstrip(" .,:;=").lstrip(" ,")
-    match = _MULTIPLE.fullmatch(unit)
-    if match:
-        unit = f"x {match['base']}".strip()
-    elif _PER_CENT.fullmatch(unit):
-        unit = _PER_CENT.sub(r"% \g<base>", unit).strip()
-    elif _BARE_BASE.fullmatch(unit):
-        unit = f"x {unit}"
-    is_unit = (
-        len(unit) <= LONGEST_UNIT and _UNIT.fullmatch(unit) and not re.search(r"(?:^x ?|[ (])[\d.,]*\d(?!/)", unit)
-    )
-    return (unit if is_unit else None), qualifier
 
 
 def _range(text: str, value: str, decimal_comma: bool | None) -> CellReading | None:
