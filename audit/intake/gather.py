@@ -12,14 +12,14 @@ from audit.fleet.addresses import NO_CELL, SheetBook
 from audit.fleet.fleet import Complaint, InputFile, Question
 from audit.intake.candidates import ORDER, Candidate, candidates_of
 from audit.intake.gathered import CannotRead, ColumnReading, Gathered, SheetReading
-from audit.intake.layouts.block import known_tags, read_block
+from audit.intake.layouts.anchors import known_tags
+from audit.intake.layouts.block import read_block
 from audit.intake.layouts.change_log import read_change_log
 from audit.intake.layouts.long import read_long
 from audit.intake.layouts.points import read_points
 from audit.intake.layouts.wide import read_wide
 from audit.intake.opening import UnreadableWorkbook, find_workbooks, open_workbook
 from audit.intake.recognition.blocks import Readings, frame
-from audit.intake.recognition.cells_to_readings import Source
 from audit.intake.recognition.decimal_mark import decimal_mark
 from audit.intake.recognition.dictionary import combined_readings
 from audit.intake.recognition.dual_voltage import choose_by_bus
@@ -27,6 +27,7 @@ from audit.intake.recognition.header_rows import Heading
 from audit.intake.recognition.plans import MAPPED, UNREAD, Plan
 from audit.intake.recognition.row_kinds import rows_in_words
 from audit.intake.recognition.sheets import Records, Sheet, said
+from audit.intake.recognition.source import Source
 from audit.intake.recognition.tables import Verdict, table_of
 from audit.intake.resolve.names import exact
 from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map, same_header

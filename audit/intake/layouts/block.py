@@ -2,48 +2,28 @@
 
 from __future__ import annotations
 
-import re
-from collections.abc import Iterable, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass
 
 import numpy as np
 
 from audit.intake.cells import CellValue
 from audit.intake.celltext import cell_text
+from audit.intake.layouts.anchors import Anchor, find_anchors, sheet_tag
 from audit.intake.layouts.setting_names import NamedSettings, match_setting
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.folding import fold_header
 from audit.intake.recognition.header_units import is_unit
-from audit.intake.recognition.matching import heading_element, match_header
+from audit.intake.recognition.matching import heading_element
 from audit.intake.recognition.settings_grammar import read_part
 from audit.intake.recognition.sheets import Sheet, said
 from audit.intake.resolve.names import exact
 
 FEWEST_SETTINGS = 3
 FARTHEST_VALUE = 4
+LOOKED_AT_ROWS = 400
+"""Rows from which the columns of names and values are told."""
 LONGEST_NAME = 70
-_LABEL = re.compile(
-    r"(?P<what>relay(?: tag| id| no\.?| name)?|ied|protection relay|motor(?: tag| id| no\.?)?|tag(?: no\.?)?|"
-    r"equipment tag|feeder|setting group|group)\s*[:=]\s*(?P<text>\S.*)",
-    re.IGNORECASE | re.DOTALL,
-)
-_GENERAL_NAME = re.compile(
-    r"(?:sheet|tabelle|table|feuil|hoja|blad)\s*\d*|settings?(?: list| data| sheet)?|relay settings?|relays?|data|"
-    r"parameters?|protection(?: settings?)?|page \d+",
-    re.IGNORECASE,
-)
-_PIECE_ENDS = " ,:;()[]{}'\"/–—-"
-
-
-@dataclass(frozen=True)
-class Anchor:
-    """A cell that says whose settings follow: kind is 'relay', 'motor' or 'group'."""
-
-    row: int
-    column: int
-    kind: str
-    text: str
-    cell: tuple[int, int]
 
 
 @dataclass
@@ -57,32 +37,23 @@ class _Band:
 
 
 def is_block(grid: SheetGrid) -> bool:
-    """Tell whether a sheet holds names of settings with values beside them."""
-    names = {
-        found.name
-        for band in find_bands(grid)
-        for row in range(1, grid.height + 1)
-        if _filled(grid, row, band.values)
-        for found in [match_setting("", _name(grid, row, band.names))]
-        if found.known
-    }
-    return len(names) >= FEWEST_SETTINGS or _named_below_headings(grid) >= FEWEST_SETTINGS
-
-
-def _named_below_headings(grid: SheetGrid) -> int:
-    """Count settings whose names make sense only below the heading of an element."""
+    """Tell whether a sheet holds names of settings with values beside them, alone or below headings of elements."""
     found: set[str] = set()
     for band in find_bands(grid):
         function = ""
-        for row in range(1, grid.height + 1):
+        for row in _rows_looked_at(grid):
             name = _name(grid, row, band.names)
             if name and not _filled(grid, row, band.values):
                 function = name
-            elif name and function:
-                match = match_setting(function, name)
-                if match.known:
-                    found.add(match.name)
-    return len(found)
+            elif name:
+                for match in (match_setting("", name), match_setting(function, name)):
+                    if match.known:
+                        found.add(match.name)
+    return len(found) >= FEWEST_SETTINGS
+
+
+def _rows_looked_at(grid: SheetGrid) -> range:
+    return range(1, min(grid.height, LOOKED_AT_ROWS) + 1)
 
 
 def _name(grid: SheetGrid, row: int, column: int) -> str:
@@ -115,7 +86,7 @@ def find_bands(grid: SheetGrid) -> list[_Band]:
             continue
         rows = [
             row
-            for row in range(1, grid.height + 1)
+            for row in _rows_looked_at(grid)
             if isinstance(grid.rows[row - 1][column - 1], str) and _is_name(_name(grid, row, column))
         ]
         if len(rows) < 2:
@@ -156,8 +127,8 @@ def read_block(sheet: Sheet, tags: Mapping[str, tuple[str, str]], relay: str = "
     """Read a sheet of blocks. `tags` gives for each folded known tag its kind ('relay' or 'motor') and spelling."""
     grid = sheet.grid
     bands = find_bands(grid)
-    anchors = _anchors(grid, bands, tags)
-    fallback = relay or _sheet_tag(sheet, tags)
+    anchors = find_anchors(grid, tags, lambda row, column: _beside_name(grid, row, column, bands))
+    fallback = relay or sheet_tag(sheet, tags)
     settings = NamedSettings(sheet)
     records: dict[tuple[str, str, str], int] = {}
     owners: dict[int, tuple[Anchor | None, Anchor | None, str]] = {}
@@ -234,103 +205,5 @@ def _governing(anchors: list[Anchor], kind: str, row: int, band: _Band) -> Ancho
     return max(shared, key=lambda anchor: (anchor.row, anchor.column)) if shared else None
 
 
-def _anchors(grid: SheetGrid, bands: list[_Band], tags: Mapping[str, tuple[str, str]]) -> list[Anchor]:
-    """Find the cells that say whose settings follow."""
-    values = {band.values for band in bands}
-    found: list[Anchor] = []
-    for row in range(1, grid.height + 1):
-        for column in range(1, grid.width + 1):
-            value = grid.rows[row - 1][column - 1]
-            if not isinstance(value, str) or (column in values and _beside_name(grid, row, column, bands)):
-                continue
-            text = cell_text(value)
-            if not text or len(text) > LONGEST_NAME:
-                continue
-            found += _anchors_in(grid, row, column, text, tags)
-    return found
-
-
 def _beside_name(grid: SheetGrid, row: int, column: int, bands: list[_Band]) -> bool:
     return any(band.values == column and _name(grid, row, band.names) for band in bands)
-
-
-def _anchors_in(grid: SheetGrid, row: int, column: int, text: str, tags: Mapping[str, tuple[str, str]]) -> list[Anchor]:
-    match = _LABEL.fullmatch(text)
-    if match:
-        kind = _kind(match["what"])
-        return [Anchor(row, column, kind, _known_or_whole(match["text"], tags, kind), (row, column))]
-    kind = _kind(text.strip(" :=")) if _is_label(text) else ""
-    if kind:
-        for place in range(column + 1, min(column + FARTHEST_VALUE, grid.width) + 1):
-            beside = cell_text(grid.rows[row - 1][place - 1])
-            if beside:
-                return [Anchor(row, column, kind, _known_or_whole(beside, tags, kind), (row, place))]
-        return []
-    if match_setting("", text).known:
-        return []
-    return [Anchor(row, column, kind, spelled, (row, column)) for kind, spelled in tags_within(text, tags)]
-
-
-def _is_label(text: str) -> bool:
-    folded = text.strip(" :=")
-    if fold_header(folded) in ("setting group", "group", "active group"):
-        return True
-    return match_header(folded, "relay").quantity in ("relay_tag", "motor") or fold_header(folded) in (
-        "tag",
-        "feeder",
-    )
-
-
-def _kind(label: str) -> str:
-    folded = fold_header(label)
-    if "group" in folded.split():
-        return "group"
-    if folded.split()[0] in ("motor", "tag", "equipment", "feeder"):
-        return "motor"
-    return "relay" if match_header(label, "relay").quantity != "motor" else "motor"
-
-
-def _known_or_whole(text: str, tags: Mapping[str, tuple[str, str]], kind: str) -> str:
-    """Give the known tag within a text, else its first line."""
-    for known, spelled in tags_within(text, tags):
-        if known == kind:
-            return spelled
-    return text.split("\n")[0].strip()
-
-
-def tags_within(text: str, tags: Mapping[str, tuple[str, str]]) -> list[tuple[str, str]]:
-    """Give the known tags that a text names as whole words, longest first.
-
-    >>> tags_within("Settings of R-101 (P-101 A)", {"r-101": ("relay", "R-101"), "p-101 a": ("motor", "P-101 A")})
-    [('motor', 'P-101 A'), ('relay', 'R-101')]
-    """
-    words = text.replace("\n", " ").split(" ")
-    found: list[tuple[str, str]] = []
-    for length in range(min(4, len(words)), 0, -1):
-        for start in range(len(words) - length + 1):
-            piece = exact(" ".join(words[start : start + length]).strip(_PIECE_ENDS))
-            if piece in tags and tags[piece] not in found:
-                found.append(tags[piece])
-    return found
-
-
-def _sheet_tag(sheet: Sheet, tags: Mapping[str, tuple[str, str]]) -> str:
-    """Give the relay that the name of a sheet, or else of its file, stands for."""
-    name = sheet.grid.name
-    within = tags_within(name, tags)
-    if within:
-        return within[0][1]
-    stem = sheet.source.file.rpartition(".")[0]
-    if _GENERAL_NAME.fullmatch(name.strip()):
-        within = tags_within(stem, tags)
-        return within[0][1] if within else stem
-    return name.strip()
-
-
-def known_tags(texts: Iterable[tuple[str, str]]) -> dict[str, tuple[str, str]]:
-    """Give the tags by which headings are understood; a tag of both kinds counts as the relay's."""
-    tags: dict[str, tuple[str, str]] = {}
-    for kind, text in texts:
-        if text and (exact(text) not in tags or kind == "relay"):
-            tags[exact(text)] = (kind, text)
-    return tags

@@ -162,8 +162,10 @@ def read_long(sheet: Sheet, heading: LongHeading, group: str = "", relay: str = 
     spelled: dict[int, tuple[str, str]] = {}
     last = {"relay": "", "motor": "", "function": "", "group": ""}
     last_rows = {"relay": 0, "motor": 0}
-    for row in range(heading.row + 1, grid.height + 1):
-        texts = {role: _text(grid, row, column) for role, column in roles.items()}
+    columns = {role: list(map(cell_text, grid.column(column, heading.row + 1))) for role, column in roles.items()}
+    head_name = _text(grid, heading.row, roles.get("name"))
+    for place, row in enumerate(range(heading.row + 1, grid.height + 1)):
+        texts = {role: column[place] for role, column in columns.items()}
         if texts.get("relay") and texts["relay"] != last["relay"]:
             last.update(function="", motor="", group="")
         if texts.get("motor") and "relay" not in roles and texts["motor"] != last["motor"]:
@@ -173,7 +175,7 @@ def read_long(sheet: Sheet, heading: LongHeading, group: str = "", relay: str = 
                 last[role] = texts[role]
                 if role in last_rows:
                     last_rows[role] = row
-        if not texts["value"] or texts.get("name") == _text(grid, heading.row, roles.get("name")):
+        if not texts["value"] or texts.get("name") == head_name:
             continue
         whose = last["relay"] or relay
         in_group = last["group"] or group

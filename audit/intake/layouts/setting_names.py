@@ -13,7 +13,7 @@ from audit.intake.cells import CellValue
 from audit.intake.celltext import cell_text, find_decimal_comma
 from audit.intake.celltext.characters import plain
 from audit.intake.recognition.blocks import objects
-from audit.intake.recognition.cells_to_readings import ADVICE, Cells
+from audit.intake.recognition.cells_to_readings import unit_named
 from audit.intake.recognition.dictionary import combined_readings
 from audit.intake.recognition.folding import fold_header
 from audit.intake.recognition.header_units import split_units
@@ -29,6 +29,7 @@ from audit.intake.recognition.quantity_columns import read_named
 from audit.intake.recognition.second_signs import is_level, part_by_cells
 from audit.intake.recognition.settings_grammar import read_part, setting_named
 from audit.intake.recognition.sheets import Sheet
+from audit.intake.recognition.source import ADVICE, Cells
 from audit.intake.sitemap import MappedColumn
 from audit.vocabulary.quantities import Quantity, vocabulary
 from audit.vocabulary.spellings import UnitReading, read_unit
@@ -214,7 +215,7 @@ class NamedSettings:
         """Give the unit beside a value; a text where it does not fit the quantity."""
         if not text or quantity.kind != "number":
             return stated
-        unit = read_unit(text, quantity)
+        unit = unit_named(text, quantity.name)
         if unit is None:
             self.sheet.source.complain(
                 self.sheet.address(values.rows[place], values.columns[place]),

@@ -3,16 +3,11 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Sequence
-from dataclasses import dataclass, field
 from datetime import datetime
+from functools import lru_cache
 
 import numpy as np
-from numpy.typing import NDArray
 
-from audit.fleet.addresses import a1, unpack
-from audit.fleet.fleet import Complaint, Question
-from audit.intake.cells import CellValue
 from audit.intake.celltext import (
     KIND_CODES,
     CellKind,
@@ -28,89 +23,18 @@ from audit.intake.recognition.blocks import (
     OFF,
     PENDING,
     VALUE,
-    Integers,
-    Objects,
     Readings,
     filled,
     objects,
 )
-from audit.vocabulary.quantities import Quantity, fold_choice
+from audit.intake.recognition.source import ADVICE, Cells, Source
+from audit.vocabulary.quantities import Quantity, fold_choice, vocabulary
 from audit.vocabulary.spellings import UnitReading, conversion, read_unit
 
 NO_UNIT = UnitReading("")
 EPOCH = datetime(1970, 1, 1)
 MANY = 20
-ADVICE = "Correct the cell, or leave it empty: what needs it then counts as unproven."
 _RATED_VOLTAGE_ONLY = ("safe_stall_hot_s", "safe_stall_cold_s", "locked_rotor_a", "locked_rotor_ratio")
-
-
-@dataclass
-class Source:
-    """The sheet that cells come from, and where complaints and questions about them go."""
-
-    file: str
-    sheet: str
-    decimal_comma: bool | None = None
-    stand_ins: frozenset[float] = frozenset()
-    zero_means_off: bool | None = None
-    day_first: bool | None = None
-    complaints: list[Complaint] = field(default_factory=list)
-    questions: list[Question] = field(default_factory=list)
-
-    def complain(
-        self,
-        cell: int,
-        found: str,
-        expected: str,
-        advice: str = ADVICE,
-        quantity: str = "",
-        weight: str = "withheld",
-    ) -> None:
-        """Keep a complaint about a packed cell."""
-        self.complaints.append(
-            Complaint(
-                self.file,
-                self.sheet,
-                name_of_cell(cell),
-                found,
-                expected,
-                advice,
-                quantity,
-                weight="remark" if weight == "remark" else "withheld",
-            )
-        )
-
-    def remark(self, cell: int, found: str, expected: str, advice: str = "", quantity: str = "") -> None:
-        """Keep a remark: something the reader should know, though nothing is withheld."""
-        self.complain(cell, found, expected, advice, quantity, weight="remark")
-
-    def ask(self, cell: int, about: str, ask: str, answers: tuple[str, ...] = ()) -> None:
-        """Keep a question about a packed cell."""
-        self.questions.append(Question(self.file, self.sheet, name_of_cell(cell), about, ask, answers))
-
-
-def name_of_cell(cell: int) -> str:
-    """Give the name of a packed cell, '' for none."""
-    _, row, column = unpack(cell)
-    return a1(int(row), int(column)) if int(row) else ""
-
-
-@dataclass
-class Cells:
-    """Cells of one quantity: their values, addresses, records, and what header, unit row or unit column say."""
-
-    values: Sequence[CellValue]
-    address: Integers
-    record: Integers
-    unit: UnitReading | Sequence[UnitReading | None] | None = None
-    percent: NDArray[np.bool_] | None = None
-    struck: NDArray[np.bool_] | None = None
-    header: str = ""
-    group: Objects | str = ""
-
-
-Special = Callable[[CellReading, str], "list[tuple[str, CellReading]] | None"]
-"""Takes the reading of an odd cell and its text; gives quantities with their readings, or None."""
 
 
 def read_cells(quantity: Quantity, cells: Cells, source: Source) -> Readings:
@@ -154,9 +78,19 @@ def _finish(made: Readings, cells: Cells, source: Source) -> Readings:
             )
     present = np.flatnonzero(made.state != "")
     made = made.part(present)
-    made.written = objects(
-        [value if isinstance(value, str) else cell_text(value) for value in (cells.values[i] for i in present.tolist())]
-    )
+    known: dict[object, str] = {}
+    written = []
+    for place in present.tolist():
+        value = cells.values[place]
+        if not isinstance(value, str):
+            # 1 and True are one key of a dictionary
+            key = (type(value), value)
+            text = known.get(key)
+            if text is None:
+                text = known[key] = cell_text(value)
+            value = text
+        written.append(value)
+    made.written = objects(written)
     return made
 
 
@@ -165,7 +99,7 @@ def unit_of(text: str, stated: UnitReading | None, quantity: Quantity) -> UnitRe
     stated = stated or NO_UNIT
     if not text:
         return stated
-    own = read_unit(text, quantity)
+    own = unit_named(text, quantity.name)
     if own is None:
         return None
     if not own.base and stated.base and _takes_base(own, stated):
@@ -173,15 +107,15 @@ def unit_of(text: str, stated: UnitReading | None, quantity: Quantity) -> UnitRe
     return own
 
 
+@lru_cache(maxsize=4096)
+def unit_named(text: str, quantity: str) -> UnitReading | None:
+    """Give what a written unit means for a quantity, or None; each spelling is looked up once."""
+    return read_unit(text, vocabulary().quantities[quantity])
+
+
 def _takes_base(own: UnitReading, stated: UnitReading) -> bool:
     multiple = own.unit in ("x", "pct")
     return multiple == (stated.base not in ("primary", "secondary"))
-
-
-def _stated(cells: Cells, index: int) -> UnitReading | None:
-    if cells.unit is None or isinstance(cells.unit, UnitReading):
-        return cells.unit
-    return cells.unit[index]
 
 
 def _numbers(quantity: Quantity, cells: Cells, source: Source) -> Readings:
@@ -222,7 +156,7 @@ def _odd(
     made.number[index] = math.nan
     made.state[index] = BAD
     if kind is CellKind.NUMBER:
-        unit = unit_of(reading.unit_text, _stated(cells, index), quantity)
+        unit = unit_of(reading.unit_text, cells.stated(index), quantity)
         if unit is None:
             return f"'{reading.text}': '{reading.unit_text}' is no unit of {quantity.label}", expected
         if quantity.name in _RATED_VOLTAGE_ONLY and _at_other_voltage(reading.qualifier):
@@ -246,7 +180,7 @@ def _odd(
         made.state[index] = PENDING
         return None
     if kind is CellKind.AMBIGUOUS:
-        settled = _plausible_one(reading, _stated(cells, index), quantity)
+        settled = _plausible_one(reading, cells.stated(index), quantity)
         if settled is not None:
             made.state[index], made.number[index] = VALUE, settled
             made.unit[index] = reading.unit_text or made.unit[index]

@@ -15,6 +15,8 @@ from audit.vocabulary.spellings import UnitReading, read_unit
 
 SEARCHED_ROWS = 40
 DEEPEST = 3
+WIDEST = 1000
+"""Columns beyond this one hold no table."""
 FEWEST = 2
 _KEYS = {"motor": "motor", "relay": "relay_tag", "bus": "bus_name", "start": "start_motor"}
 
@@ -90,7 +92,7 @@ def heading_at(grid: SheetGrid, row: int, depth: int) -> Heading:
 def _known_cells(grid: SheetGrid, row: int) -> int:
     return sum(
         1
-        for value in grid.rows[row - 1]
+        for value in grid.rows[row - 1][:WIDEST]
         if isinstance(value, str) and any(_means_something(value, table) for table in TABLES)
     )
 
@@ -125,7 +127,7 @@ def heading_texts(grid: SheetGrid, row: int, depth: int) -> dict[int, tuple[str,
     """Give for each column its header read downwards, merged headings spread over their columns."""
     levels = [_level(grid, row + offset, row + depth - 1) for offset in range(depth)]
     texts: dict[int, tuple[str, ...]] = {}
-    for column in range(1, grid.width + 1):
+    for column in range(1, min(grid.width, WIDEST) + 1):
         parts: list[str] = []
         own = False
         for offset, (level, spread) in enumerate(levels):

@@ -7,8 +7,8 @@ from dataclasses import replace
 
 from audit.intake.cells import CellValue
 from audit.intake.celltext import read_number_column
-from audit.intake.recognition.cells_to_readings import Source
 from audit.intake.recognition.plans import ASKED, MAPPED, Plan
+from audit.intake.recognition.source import Source
 from audit.vocabulary.quantities import vocabulary
 from audit.vocabulary.spellings import dimension_of
 

@@ -8,9 +8,11 @@ import numpy as np
 
 from audit.intake.celltext import cell_text
 from audit.intake.recognition.blocks import Readings
-from audit.intake.recognition.cells_to_readings import Cells, Source, read_cells
-from audit.intake.recognition.combined import holds_pair, part_of, read_combined, read_ratio
+from audit.intake.recognition.cells_to_readings import read_cells
+from audit.intake.recognition.combined import holds_pair, read_combined
 from audit.intake.recognition.dictionary import combined_readings
+from audit.intake.recognition.ratios import read_ratio
+from audit.intake.recognition.source import Cells, Source
 from audit.vocabulary.quantities import vocabulary
 
 PAIRED = {
@@ -34,8 +36,8 @@ def read_named(name: str, cells: Cells, source: Source) -> list[Readings]:
     if name in PAIRED:
         pairs = np.array([isinstance(value, str) and holds_pair(value) for value in cells.values], dtype=bool)
         if pairs.any():
-            rest = read_cells(quantity, part_of(cells, np.flatnonzero(~pairs)), source)
-            return [rest, *_pairs(name, part_of(cells, np.flatnonzero(pairs)), source)]
+            rest = read_cells(quantity, cells.part(np.flatnonzero(~pairs)), source)
+            return [rest, *_pairs(name, cells.part(np.flatnonzero(pairs)), source)]
     return [read_cells(quantity, cells, source)]
 
 

@@ -7,13 +7,13 @@ from dataclasses import dataclass, field
 
 import numpy as np
 
-from audit.fleet.addresses import pack
+from audit.fleet.addresses import COLUMN_BITS, ROW_BITS, pack
 from audit.intake.cells import CellValue
 from audit.intake.celltext import cell_text
 from audit.intake.gathered import ColumnReading
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.blocks import Integers, Readings, filled, objects
-from audit.intake.recognition.cells_to_readings import Cells, Source, name_of_cell
+from audit.intake.recognition.source import Cells, Source, name_of_cell
 from audit.intake.sitemap import MappedSheet
 from audit.vocabulary.spellings import UnitReading
 
@@ -45,7 +45,7 @@ class Sheet:
 
     def address(self, row: int, column: int) -> int:
         """Pack the address of one cell."""
-        return int(pack(self.index, row, column))
+        return (self.index << (ROW_BITS + COLUMN_BITS)) | (row << COLUMN_BITS) | column
 
     def value(self, row: int, column: int) -> CellValue:
         """Give the value of one cell, None beyond the sheet."""

@@ -83,7 +83,7 @@ def _motor(matches: Mapping[str, Mapping[int, HeaderMatch]], settings_make_list:
     who = names & _WHO_AND_WHERE
     settings = {name for name in names if name not in known or known[name].subject == "relay"}
     verdict = Verdict("motor", len(facts) + len(who) + len(settings), motor)
-    if settings_make_list and (settings or facts):
+    if settings_make_list and ("motor" in names or len(facts) + len(settings) >= 3) and (settings or facts):
         return verdict
     # what a relay is told, too, says nothing about whose list this is
     own = names_in({column: found for column, found in motor.items() if not relay.get(column, found).known})
