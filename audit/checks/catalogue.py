@@ -10,6 +10,7 @@ from typing import Any
 from audit.checks.entry import Check, Requirement, read_entry
 from audit.checks.wording import limit_in_words
 from audit.derivation.functions import FUNCTIONS
+from audit.derivation.hand_over_facts import HAND_OVER_FACTS
 from audit.derivation.recipes import Recipe, check_recipes, lookup_for, read_recipes
 from audit.derivation.register_facts import REGISTER_FACTS
 from audit.expression.functions import Functions
@@ -109,7 +110,7 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
             if name in recipes:
                 raise BadRule(more[name].file, name, "the quantity is already derived by the tool's own rules")
         recipes, derived = {**recipes, **more}, {**derived, **more_derived}
-    quantities = {**vocabulary().quantities, **REGISTER_FACTS, **derived}
+    quantities = {**vocabulary().quantities, **REGISTER_FACTS, **HAND_OVER_FACTS, **derived}
     _refuse_clashes(limits, recipes, checks)
     meanings = lookup_for(quantities, limits)
     check_recipes(recipes, meanings, FUNCTIONS)
@@ -163,7 +164,7 @@ def _site(
 
 
 def _refuse_clashes(limits: Mapping[str, Limit], recipes: Mapping[str, Recipe], checks: list[Check]) -> None:
-    known = {**vocabulary().quantities, **REGISTER_FACTS}
+    known = {**vocabulary().quantities, **REGISTER_FACTS, **HAND_OVER_FACTS}
     for name in limits:
         if name in known or name in recipes:
             raise BadRule("limits.toml", name, "a limit has the name of a quantity")
