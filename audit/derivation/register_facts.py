@@ -225,7 +225,8 @@ def _relay_facts(fleet: Fleet) -> Iterator[tuple[str, Column]]:
 def _copies_of_spares(relays: Table, serves: Mask) -> Bytes:
     role = _of(relays, "relay_role")
     spare = (role.values == role.choices.index("spare")) | (role.missing() & ~serves)
-    settings = [_of(relays, name) for name, quantity in vocabulary().settings().items() if quantity.kind != "text"]
+    compared = [q for q in vocabulary().settings().values() if q.kind != "text" and not q.absent_means_no]
+    settings = [_of(relays, quantity.name) for quantity in compared]
     known = np.sum([~column.missing() for column in settings], axis=0)
     enough = known >= LEAST_SETTINGS_COMPARED
     kind = _texts(_of(relays, "relay_type"))
