@@ -23,7 +23,7 @@ SUBJECTS = ("motor", "relay", "bus", "sisters", "peers")
 _WORDS = ("says", "severity_because", "why", "blind_spots", "remedy", "source", "function")
 _BOUND_KEYS = {"when", "judges", "within", "source", *BOUND_KINDS}
 _KEYS = {*_WORDS, *_BOUND_KEYS, "subject", "severity", "evidence", "for_each", "unless_found", "stage", "bound", "case"}
-_KEYS |= {"slips", "signs", "beyond"}
+_KEYS |= {"slips", "signs", "beyond", "judged_as"}
 
 
 @dataclass(frozen=True, slots=True)
@@ -74,6 +74,8 @@ class Check:
     unless_found: str | None = None
     stage: Literal["rows", "ranges"] = "rows"
     each: str | None = None
+    judged_as: str = ""
+    """What is judged in words, where the expression would not read well; {label} stands for the setting's label."""
     slips: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
     """By the unit of what is judged ("1" for none): limits and quantities that a slip multiplies or divides by."""
     signs: tuple[str, ...] = ()
@@ -244,6 +246,7 @@ def _one(path: Path, name: str, entry: Mapping[str, Any], pack: str, each: str |
         unless_found=entry.get("unless_found"),
         stage=stage,
         each=each,
+        judged_as=str(entry.get("judged_as", "")),
         slips=_slips(path, name, entry),
         signs=tuple(_listed(entry.get("signs", []))),
         beyond=entry.get("beyond"),

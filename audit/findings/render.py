@@ -91,7 +91,7 @@ class FindingRenderer:
             severity=check.severity,
             says=check.says,
             judges=setting,
-            label=self._label(requirement, quantity),
+            label=self._label(requirement, quantity, check),
             present=present,
             present_text=present_text,
             unit=unit.symbol,
@@ -210,7 +210,10 @@ class FindingRenderer:
         checker = UnitCheck(self._meanings.get, self._meanings, self.audit.workings.functions)
         return checker.meaning(node).unit or DIMENSIONLESS
 
-    def _label(self, requirement: Requirement, quantity: Quantity | None) -> str:
+    def _label(self, requirement: Requirement, quantity: Quantity | None, check: Check) -> str:
+        if check.judged_as:
+            setting = self.audit.workings.quantities.get(check.each or "")
+            return check.judged_as.replace("{label}", setting.label if setting else "")
         if quantity is not None:
             return quantity.label
         node = requirement.judged
@@ -275,7 +278,7 @@ class FindingRenderer:
         return names[0], names[1]
 
     def _because(self, requirement: Requirement, code: FindingCode, check: Check, present_text: str, unit: Unit) -> str:
-        label = self._label(requirement, self.audit.workings.quantities.get(requirement.setting() or ""))
+        label = self._label(requirement, self.audit.workings.quantities.get(requirement.setting() or ""), check)
         if requirement.kind == "must_be":
             return f"{label}: {present_text}, wanted: {self._switch_word(requirement, requirement.text == 'on')}"
         if requirement.kind == "must_be_stated":
@@ -298,7 +301,7 @@ class FindingRenderer:
         return [f"{self.trace.label_of(name)}: {self.trace.text_of(subject, row, name)}" for name in names]
 
     def _judged_numbers(self, requirement: Requirement, check: Check, code: FindingCode, shown: str) -> str:
-        if requirement.judged is None or isinstance(requirement.judged, Name):
+        if requirement.judged is None or check.judged_as or isinstance(requirement.judged, Name):
             return shown
         return f"{self.trace.numbers_in(requirement.judged, check.subject, code.row)} = {shown}"
 

@@ -81,9 +81,9 @@ def _names(names: list[str]) -> str:
 def _table(lines: list[tuple[list[str], Finding]], width: int) -> Table:
     wide = width >= WIDE
     table = Table(box=None, pad_edge=False, show_edge=False, header_style="italic", expand=False)
-    table.add_column(
-        "motor" if lines[0][1].motor else lines[0][1].subject, overflow="fold", max_width=34 if wide else 20
-    )
+    first = lines[0][1]
+    heading = "motor (relay)" if first.motor and first.relay else "motor" if first.motor else first.subject
+    table.add_column(heading, overflow="fold", max_width=40 if wide else 22)
     if any(finding.range_text for _, finding in lines):
         table.add_column("present", justify="right", no_wrap=not wide, overflow="fold")
         table.add_column("permissible", overflow="fold", max_width=26 if wide else 22)
