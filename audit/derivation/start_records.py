@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -35,28 +37,50 @@ def starts_in_busiest_hour(values: list[Floats], parent: Integers, parents: int)
     return number, first.astype(np.int64)
 
 
+@dataclass(frozen=True, slots=True)
+class StartTrend:
+    """How a value of the starts of each motor moves over the dates."""
+
+    slope_per_day: Floats
+    level: Floats
+    """The median value, which stands at the median date."""
+    level_day: Floats
+    last_day: Floats
+    clear: NDArray[np.bool_]
+    """Whether Kendall's test calls the trend significant."""
+    enough: NDArray[np.bool_]
+    """Whether there are enough comparable starts over a time long enough."""
+    last_start: Integers
+
+
+def start_trend(moment: Floats, value: Floats, voltage: Floats, parent: Integers, parents: int) -> StartTrend:
+    """Give the trend of comparable starts: those whose voltage lies within 5 % of the median."""
+    usable = (parent >= 0) & ~np.isnan(moment) & ~np.isnan(value)
+    group = np.where(usable, parent, NO_ROW)
+    usual = np.append(median([voltage], group, parents)[0], np.nan)[group]
+    with np.errstate(invalid="ignore"):
+        group = np.where(np.abs(voltage / usual - 1) > VOLTAGE_BAND, NO_ROW, group)
+    slope = np.asarray(theil_sen_slope_by_group(group, moment, value, parents), dtype=float)
+    probability = np.asarray(kendall_probability_by_group(group, moment, value, parents), dtype=float)
+    last, last_start = greatest([moment], group, parents)
+    span = last - least([moment], group, parents)[0]
+    with np.errstate(invalid="ignore"):
+        clear = probability < SIGNIFICANT
+        enough = (count([value], group, parents)[0] >= LEAST_STARTS) & (span >= LEAST_SPAN_DAYS)
+    level, level_day = median([value], group, parents)[0], median([moment], group, parents)[0]
+    return StartTrend(slope, level, level_day, last, clear, enough, last_start)
+
+
 def drifted_start_time(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
     """Start time a year after the last record if the trend goes on; the present level where there is no clear trend.
 
     Missing where fewer than six comparable starts (voltage within 5 % of the median) over 60 days are known.
     """
     moment, duration, voltage = values
-    usable = (parent >= 0) & ~np.isnan(moment) & ~np.isnan(duration)
-    group = np.where(usable, parent, NO_ROW)
-    usual = np.append(median([voltage], group, parents)[0], np.nan)[group]
-    with np.errstate(invalid="ignore"):
-        group = np.where(np.abs(voltage / usual - 1) > VOLTAGE_BAND, NO_ROW, group)
-    slope = np.asarray(theil_sen_slope_by_group(group, moment, duration, parents), dtype=float)
-    probability = np.asarray(kendall_probability_by_group(group, moment, duration, parents), dtype=float)
-    last, deciding = greatest([moment], group, parents)
-    span = last - least([moment], group, parents)[0]
-    level = median([duration], group, parents)[0]
-    ahead = last - median([moment], group, parents)[0] + HORIZON_DAYS
-    with np.errstate(invalid="ignore"):
-        clear = probability < SIGNIFICANT
-        enough = (count([duration], group, parents)[0] >= LEAST_STARTS) & (span >= LEAST_SPAN_DAYS)
-    projected = np.where(clear, level + slope * ahead, level)
-    return np.where(enough, projected, np.nan), deciding
+    trend = start_trend(moment, duration, voltage, parent, parents)
+    ahead = trend.last_day - trend.level_day + HORIZON_DAYS
+    projected = np.where(trend.clear, trend.level + trend.slope_per_day * ahead, trend.level)
+    return np.where(trend.enough, projected, np.nan), trend.last_start
 
 
 START_FUNCTIONS: dict[str, Function] = {
