@@ -57,9 +57,7 @@ def _merged(findings: Iterable[Finding]) -> list[tuple[list[str], Finding]]:
     lines: dict[tuple[str, str, str], tuple[list[str], Finding]] = {}
     for finding in findings:
         name = finding.motor or finding.name
-        if finding.subject in ("sisters", "peers") and finding.motor:
-            name = f"{finding.motor} of {finding.name}"
-        elif finding.relay and finding.relay != name:
+        if finding.relay and finding.relay != name:
             name += f" ({finding.relay})"
         if finding.setting_group:
             name += f" (group {finding.setting_group})"
