@@ -43,6 +43,11 @@ class Candidate:
             return self.verdict.table if self.verdict else ""
         return "relay" if self.layout in ("long", "block") else ""
 
+    def order(self) -> float:
+        """Give the place in the order of reading; a list that names no relay waits for those that do."""
+        waits = self.layout == "long" and self.listed is not None and not self.listed.names_owner
+        return ORDER.index("log") + 0.5 if waits else float(ORDER.index(self.layout))
+
     @property
     def header_rows(self) -> tuple[int, int]:
         """Give the first header row and the number of header rows, zeros where there are none."""

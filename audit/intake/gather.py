@@ -4,15 +4,18 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass, field
+from functools import cached_property
 from pathlib import Path
 
 import numpy as np
 
 from audit.fleet.addresses import NO_CELL, SheetBook
 from audit.fleet.fleet import Complaint, InputFile, Question
-from audit.intake.candidates import ORDER, Candidate, candidates_of
+from audit.fleet.folding import exact
+from audit.intake.candidates import Candidate, candidates_of
 from audit.intake.gathered import CannotRead, ColumnReading, Gathered, SheetReading
-from audit.intake.layouts.anchors import known_tags
+from audit.intake.layouts.across import find_across, read_across
+from audit.intake.layouts.anchors import known_tags, owner_of_sheet
 from audit.intake.layouts.block import read_block
 from audit.intake.layouts.change_log import read_change_log
 from audit.intake.layouts.long import read_long
@@ -29,7 +32,6 @@ from audit.intake.recognition.row_kinds import rows_in_words
 from audit.intake.recognition.sheets import Records, Sheet, said
 from audit.intake.recognition.source import Source
 from audit.intake.recognition.tables import Verdict, table_of
-from audit.intake.resolve.names import exact
 from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map, same_header
 
 Progress = Callable[[str], None]
@@ -49,8 +51,9 @@ class _Run:
     columns: list[ColumnReading] = field(default_factory=list)
     sheets: list[SheetReading] = field(default_factory=list)
 
+    @cached_property
     def tags(self) -> dict[str, tuple[str, str]]:
-        """Give the tags of motors and relays that were read so far."""
+        """Give the tags of motors and relays that lists name; asked for once all lists are read."""
         kinds = {"motor": "motor", "relay": "relay", "relay_tag": "relay"}
         return known_tags(
             (kinds[block.quantity], text)
@@ -107,7 +110,7 @@ def gather(path: Path, progress: Progress | None = None) -> Gathered:
         raise CannotRead(run.complaints[0])
     _ensure_motor_list(candidates, path, run)
     tell("recognising tables")
-    for candidate in sorted(candidates, key=lambda candidate: ORDER.index(candidate.layout)):
+    for candidate in sorted(candidates, key=Candidate.order):
         _read(candidate, run)
     choose_by_bus(run.readings, run.complaints, run.book)
     _must_run(run)
@@ -204,9 +207,13 @@ def _by_layout(candidate: Candidate, sheet: Sheet, run: _Run) -> bool:
     mapped = candidate.mapped
     relay, group = (mapped.relay, mapped.group) if mapped else ("", "")
     if candidate.layout == "long" and candidate.listed:
-        return read_long(sheet, candidate.listed, group, relay)
+        owner = None if relay or candidate.listed.names_owner else owner_of_sheet(sheet, run.tags)
+        return read_long(sheet, candidate.listed, group, relay, owner)
     if candidate.layout == "block":
-        return read_block(sheet, run.tags(), relay, group)
+        across = find_across(sheet.grid, run.tags)
+        if across is not None and not relay:
+            return read_across(sheet, across, group)
+        return read_block(sheet, run.tags, relay, group)
     if candidate.layout == "points" and candidate.points:
         motors, fuses = run.records_named("motor"), run.records_named("fuse")
         return read_points(sheet, candidate.points, motors, fuses, run.full_load_a())

@@ -6,13 +6,14 @@ import re
 from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass
 
+from audit.fleet.folding import exact
 from audit.intake.celltext import cell_text
 from audit.intake.layouts.setting_names import match_setting
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.folding import fold_header
+from audit.intake.recognition.header_rows import SEARCHED_ROWS
 from audit.intake.recognition.matching import match_header
 from audit.intake.recognition.sheets import Sheet
-from audit.intake.resolve.names import exact
 
 FARTHEST_TAG = 4
 LONGEST_NAME = 70
@@ -137,3 +138,17 @@ def known_tags(texts: Iterable[tuple[str, str]]) -> dict[str, tuple[str, str]]:
         if text and (exact(text) not in tags or kind == "relay"):
             tags[exact(text)] = (kind, text)
     return tags
+
+
+def owner_of_sheet(sheet: Sheet, tags: Mapping[str, tuple[str, str]]) -> Anchor | None:
+    """Give whose settings a whole sheet holds: named above them, else by the name of the sheet or file."""
+    anchors = [
+        anchor
+        for anchor in find_anchors(sheet.grid, tags, lambda row, _: row > SEARCHED_ROWS)
+        if anchor.kind != "group"
+    ]
+    if anchors:
+        return min(anchors, key=lambda anchor: (anchor.kind != "relay", anchor.row, anchor.column))
+    name = sheet_tag(sheet, tags)
+    kind = tags.get(exact(name), ("relay", name))[0]
+    return Anchor(0, 0, kind, name, (0, 0)) if name else None

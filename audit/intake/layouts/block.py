@@ -7,17 +7,17 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from audit.fleet.folding import exact
 from audit.intake.cells import CellValue
 from audit.intake.celltext import cell_text
 from audit.intake.layouts.anchors import Anchor, find_anchors, sheet_tag
-from audit.intake.layouts.setting_names import NamedSettings, match_setting
+from audit.intake.layouts.setting_names import NamedSettings, heading_for, match_setting
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.folding import fold_header
 from audit.intake.recognition.header_units import is_unit
 from audit.intake.recognition.matching import heading_element
 from audit.intake.recognition.settings_grammar import read_part
 from audit.intake.recognition.sheets import Sheet, said
-from audit.intake.resolve.names import exact
 
 FEWEST_SETTINGS = 3
 FARTHEST_VALUE = 4
@@ -155,7 +155,7 @@ def read_block(sheet: Sheet, tags: Mapping[str, tuple[str, str]], relay: str = "
                 owners[records[key]] = (whose["relay"], whose["motor"], in_group)
             unit = cell_text(grid.rows[row - 1][band.units - 1]).strip("()[]") if band.units else ""
             settings.add(
-                function if heading_element(function) else "",
+                heading_for(function, name),
                 name,
                 sheet.address(row, band.names),
                 (row, band.values),

@@ -8,6 +8,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from audit.fleet.folding import exact
 from audit.intake.celltext import CellKind, cell_text, read_date_cells
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.blocks import Readings
@@ -16,7 +17,6 @@ from audit.intake.recognition.folding import fold_header
 from audit.intake.recognition.header_rows import SEARCHED_ROWS
 from audit.intake.recognition.matching import match_header
 from audit.intake.recognition.sheets import Sheet, said
-from audit.intake.resolve.names import exact
 
 _WHAT = frozenset(
     ["change", "what", "what changed", "changed", "description of change", "modification", "work done", "change made",

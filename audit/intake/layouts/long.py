@@ -8,6 +8,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from audit.intake.celltext import cell_text
+from audit.intake.layouts.anchors import Anchor
 from audit.intake.layouts.setting_names import NamedSettings, match_setting
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.folding import fold_header
@@ -65,6 +66,11 @@ class LongHeading:
     further_values: tuple[int, ...] = ()
     every_name: str = ""
     """What every row states where no column names settings: 'Output' in a table of what each element trips."""
+
+    @property
+    def names_owner(self) -> bool:
+        """Tell whether a column names the relay or the motor."""
+        return "relay" in self.roles or "motor" in self.roles
 
 
 def find_long_heading(grid: SheetGrid) -> LongHeading | None:
@@ -143,10 +149,12 @@ def _text(grid: SheetGrid, row: int, column: int | None) -> str:
     return cell_text(grid.rows[row - 1][column - 1]) if column else ""
 
 
-def read_long(sheet: Sheet, heading: LongHeading, group: str = "", relay: str = "") -> bool:
+def read_long(
+    sheet: Sheet, heading: LongHeading, group: str = "", relay: str = "", owner: Anchor | None = None
+) -> bool:
     """Read a list with one row a setting; False where neither columns nor the sheet tell whose settings they are."""
     grid, roles = sheet.grid, heading.roles
-    if "relay" not in roles and "motor" not in roles and not relay:
+    if not heading.names_owner and not relay and owner is None:
         return False
     if heading.further_values:
         others = ", ".join(f"'{_text(grid, heading.row, column)}'" for column in heading.further_values)
@@ -162,6 +170,8 @@ def read_long(sheet: Sheet, heading: LongHeading, group: str = "", relay: str = 
     spelled: dict[int, tuple[str, str]] = {}
     last = {"relay": "", "motor": "", "function": "", "group": ""}
     last_rows = {"relay": 0, "motor": 0}
+    if owner is not None:
+        last[owner.kind] = owner.text
     columns = {role: list(map(cell_text, grid.column(column, heading.row + 1))) for role, column in roles.items()}
     head_name = _text(grid, heading.row, roles.get("name"))
     for place, row in enumerate(range(heading.row + 1, grid.height + 1)):
@@ -206,7 +216,8 @@ def read_long(sheet: Sheet, heading: LongHeading, group: str = "", relay: str = 
         if not of:
             continue
         column = roles.get(role)
-        cells = [sheet.address(places[n][place], column) if column and places[n][place] else -1 for n in of]
+        beside = sheet.address(*owner.cell) if owner and owner.kind == role and owner.cell[0] else -1
+        cells = [sheet.address(places[n][place], column) if column and places[n][place] else beside for n in of]
         made = said(
             quantity,
             np.array(of, dtype=np.int64),

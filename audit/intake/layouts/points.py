@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 
 import numpy as np
 
+from audit.fleet.folding import exact
 from audit.intake.celltext import cell_text, read_number_column
 from audit.intake.opening import SheetGrid
 from audit.intake.recognition.blocks import Readings
@@ -15,7 +16,6 @@ from audit.intake.recognition.header_rows import SEARCHED_ROWS
 from audit.intake.recognition.header_units import split_units
 from audit.intake.recognition.matching import match_header
 from audit.intake.recognition.sheets import Sheet, said
-from audit.intake.resolve.names import exact
 
 _CURRENT = frozenset(["current", "i", "line current", "amps", "stator current", "fault current", "prospective current"])
 _TIMES = {

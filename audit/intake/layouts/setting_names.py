@@ -58,6 +58,17 @@ def match_setting(function: str, name: str) -> HeaderMatch:
     return alone
 
 
+def heading_for(heading: str, name: str) -> str:
+    """Give the heading under which a name stands, '' where the heading is none or the name names its own element.
+
+    >>> heading_for("50 Short circuit", "Pickup"), heading_for("50 Short circuit", "46 Pickup")
+    ('50 Short circuit', '')
+    """
+    element = heading_element(heading) if heading else ""
+    own = match_setting("", name)
+    return heading if element and own.element in ("", element) else ""
+
+
 def _within(element: str, name: str) -> HeaderMatch:
     """Match a name that stands beneath an element's heading and need not repeat it."""
     known = vocabulary().quantities

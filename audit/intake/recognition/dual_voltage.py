@@ -8,9 +8,9 @@ import numpy as np
 
 from audit.fleet.addresses import SheetBook
 from audit.fleet.fleet import Complaint
+from audit.fleet.folding import exact
 from audit.intake.celltext import CellKind, read_number_text
 from audit.intake.recognition.blocks import BAD, VALUE, Readings
-from audit.intake.resolve.names import exact
 
 CURRENTS = ("full_load_a", "locked_rotor_a")
 RATED_TO_NOMINAL = (0.85, 1.06)

@@ -180,3 +180,44 @@ def test_a_table_of_outputs_says_what_each_element_opens(gathered):
     assert values(made, "short_circuit_opens") == {"R-101": "Breaker"}
     assert values(made, "thermal_opens") == {"R-101": "Contactor"}
     assert values(made, "earth_fault_opens") == {"R-102": "Contactor"}
+
+
+ACROSS = [
+    ["Settings as issued"],
+    ["Setting", "Unit", "R-101", "R-102", "R-103"],
+    ["CT primary", "A", 200, 300, 100],
+    ["50 SHORT CIRCUIT"],
+    ["Pickup", "x FLA", 8, 9, "OFF"],
+    ["Delay", "ms", 50, 60, "-"],
+    ["46 Pickup", "%", 15, None, 20],
+]
+
+
+def test_settings_down_and_relays_across_are_read_for_each_relay(gathered):
+    made = read(gathered, ACROSS)
+    assert values(made, "short_circuit_trip_pickup_a") == {"R-101": 8, "R-102": 9, "R-103": "off"}
+    assert values(made, "unbalance_trip_pickup_pct") == {"R-101": 15, "R-103": 20}
+    assert values(made, "relay_ct_primary_a") == {"R-101": 200, "R-102": 300, "R-103": 100}
+    assert units(made, "short_circuit_trip_delay_s") >= {("ms", "")}
+
+
+def test_a_column_of_ranges_beside_the_values_is_no_relay(gathered):
+    rows = [["Name", "Set", "Range"], *([name, value, "0.1 to 99"] for name, value in BLOCK)]
+    made = read(gathered, rows, "R-102")
+    assert values(made, "short_circuit_trip_pickup_a") == {"R-102": 8}
+
+
+@pytest.mark.parametrize(
+    ("name", "above"), [("R-102", []), ("Sheet1", [["Relay:", "R-102"], []]), ("Sheet1", [["Relay R-102, as left"]])]
+)
+def test_a_list_without_a_column_of_relays_is_that_of_the_sheet(gathered, name, above):
+    rows = [
+        *above,
+        ["Function", "Setting", "Value", "Unit"],
+        ["50", "Pickup", 8, "x FLA"],
+        ["50", "Delay", 50, "ms"],
+        ["46", "Pickup", 15, "%"],
+    ]
+    made = read(gathered, rows, name)
+    assert values(made, "short_circuit_trip_pickup_a") == {"R-102": 8}
+    assert values(made, "unbalance_trip_pickup_pct") == {"R-102": 15}
