@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Sequence
 from datetime import date
+from zlib import crc32
 
 import numpy as np
 
@@ -21,7 +22,7 @@ from tests.sites.machine import (
     stall_times_s,
 )
 from tests.sites.plant import Record, Site, number
-from tests.sites.relay_settings import new_relay, set_motor_relay
+from tests.sites.relay_settings import new_relay, set_motor_relay, trip_class_for
 from tests.sites.rounding import near, printed, up
 from tests.sites.soft_start import SOFT_START_MULTIPLE, soft_start_time_s
 from tests.sites.start_records import StartBehaviour, simulate_starts
@@ -43,7 +44,8 @@ def add_family(site: Site, family: Family, random: np.random.Generator) -> None:
     slowest, usual = _start_times(machine, inertia, family)
     common = _plate(machine, family, inertia, usual, slowest)
     common["motor_make"] = MAKERS[int(random.integers(0, len(MAKERS)))]
-    common["motor_type"] = f"{'HV' if voltage > 1000 else 'LV'}{int(family.power_kw)}-{family.poles}"
+    order = crc32(family.tags[0].encode()) % 900 + 100
+    common["motor_type"] = f"{'HV' if voltage > 1000 else 'LV'}{int(family.power_kw)}-{family.poles}/{order}"
     common |= {name: value for name, value in family.facts.items() if not name.startswith("code_letter")}
     if family.facts.get("code_letter_on_plate"):
         common["locked_rotor_kva_letter"] = machine.code_letter
@@ -124,6 +126,7 @@ def _plate(machine: Machine, family: Family, inertia: float, usual_s: float, slo
         "motor_data_date": date(2023, 11, 20),
     }
     if not high_voltage:
+        plate |= {"stator_sensors": "none", "stator_sensors_wired": False, "bearing_sensors_wired": False}
         plate["efficiency_class"] = "ie3" if family.premium else "ie2"
     if family.starting_method != "drive":
         plate |= {
@@ -150,13 +153,12 @@ def _device(motor: Record, machine: Machine, family: Family, bus: Record, length
     direct = family.starting_method == "direct_on_line"
     across_the_line = direct or (family.starting_method == "soft_starter" and bool(motor.get("bypass_start_possible")))
     must_see = 0.0
-    slowest = number(motor, "stated_start_time_at_lowest_voltage_s") if family.starting_method != "drive" else 0.0
     match family.switching_device:
         case "breaker":
             motor |= switchgear.breaker(high_voltage, current)
             must_see = 2.1 * 1.8 * locked
         case "fused_contactor":
-            motor |= switchgear.contactor_with_fuses(high_voltage, current, locked, slowest)
+            motor |= switchgear.contactor_with_fuses(high_voltage, current, locked, slow=_trips_slowly(motor, family))
             must_see = 10 * number(motor, "fuse_rating_a")
             motor["fuse_melting_curve"] = melting_curve(number(motor, "fuse_rating_a"))
             motor["fuse_clearing_curve"] = clearing_curve(number(motor, "fuse_rating_a"))
@@ -181,6 +183,7 @@ def _device(motor: Record, machine: Machine, family: Family, bus: Record, length
     if family.layout:
         motor["relay"] = f"R-{str(motor['motor']).replace('-', '')}"
         motor |= phase_cts(current, 1.0 if high_voltage else 5.0, high_voltage=high_voltage)
+        motor["earth_ct_kind"] = family.earth_ct
         if family.earth_ct != "none":
             sensitive = bus["earthing"] == "high_resistance"
             motor |= earth_ct(family.earth_ct, motor, primary_a=20.0 if sensitive else 50.0)
@@ -188,6 +191,18 @@ def _device(motor: Record, machine: Machine, family: Family, bus: Record, length
             motor |= voltage_transformers(number(bus, "bus_nominal_v"))
     if high_voltage:
         motor["cable_charging_a"] = round(cables.charging_current_a(motor, bus), 2)
+
+
+def _trips_slowly(motor: Record, family: Family) -> bool:
+    """Tell whether the motor's overload protection will take a slow trip class, 20 or 30."""
+    slowest = number(motor, "stated_start_time_at_lowest_voltage_s")
+    locked = number(motor, "locked_rotor_a")
+    if family.layout != "lv_long":
+        return slowest >= 3.0
+    pickup = 1.1 * number(motor, "full_load_a")
+    limited = family.starting_method == "soft_starter" and not motor.get("bypass_start_possible")
+    greatest = number(motor, "soft_start_current_limit_a") if limited else 1.012 * locked
+    return trip_class_for(motor, locked / pickup, greatest / pickup, slowest) > 10
 
 
 def _starts(

@@ -113,7 +113,7 @@ def _thermal(setter: Setter, greatest_a: float, slowest_s: float) -> None:
         setter.put("hot_cold_ratio", hot / cold, "down")
     locked = number(motor, "locked_rotor_a")
     if relay["layout"] == "lv_long" and not hazardous:
-        relay["thermal_trip_class"] = _trip_class(motor, locked / pickup, greatest_a / pickup, slowest_s)
+        relay["thermal_trip_class"] = trip_class_for(motor, locked / pickup, greatest_a / pickup, slowest_s)
     else:
         wanted = min(0.82 * cold, 0.85 * number(motor, "te_s") if "te_s" in motor else math.inf)
         if motor.get("speed_switch_fitted"):
@@ -131,7 +131,7 @@ def _thermal(setter: Setter, greatest_a: float, slowest_s: float) -> None:
         setter.put("overcurrent_time_multiplier", 1.0)
 
 
-def _trip_class(motor: Record, locked: float, greatest: float, slowest_s: float) -> float:
+def trip_class_for(motor: Record, locked: float, greatest: float, slowest_s: float) -> float:
     """Least class (IEC 60947-4-1, 7.2 times) whose hot lower edge lets the start through, inside both stall times."""
     hot, cold = number(motor, "safe_stall_hot_s"), number(motor, "safe_stall_cold_s")
     for trip_class, lower_s in ((10.0, 4.0), (20.0, 6.0), (30.0, 9.0)):

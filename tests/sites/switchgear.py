@@ -23,11 +23,11 @@ def breaker(high_voltage: bool, full_load_a: float) -> Record:
     }
 
 
-def contactor_with_fuses(high_voltage: bool, full_load_a: float, locked_rotor_a: float, slowest_s: float) -> Record:
+def contactor_with_fuses(high_voltage: bool, full_load_a: float, locked_rotor_a: float, *, slow: bool) -> Record:
     """Fused contactor: the fuse carries the start and takes every short circuit."""
     wanted = 1.6 * full_load_a if high_voltage else 1.2 * full_load_a
     # the fuse must not melt before the relay has tripped on a stall, in 15 s or (long starts) in 30 s
-    fuse = next_up(FUSES_A, max(wanted, locked_rotor_a / (6.0 if slowest_s < 3.0 else 4.8)))
+    fuse = next_up(FUSES_A, max(wanted, locked_rotor_a / (4.8 if slow else 6.0)))
     # the contactor, which breaks 12 times its rating, must break what the fuse leaves to it: up to 3.8 times the start
     rated = 400.0 if high_voltage else next_up(CONTACTORS_A, 3.8 * locked_rotor_a / 12)
     return {
@@ -41,7 +41,7 @@ def contactor_with_fuses(high_voltage: bool, full_load_a: float, locked_rotor_a:
         "fuse_kind": "motor_circuit",
         "fuse_let_through_a2s": float(f"{1.6 * fuse**2.3:.2g}"),
         "short_circuit_device": "fuse",
-    }
+    } | ({"blown_fuse_trip": True} if high_voltage else {})
 
 
 def fused_switch(full_load_a: float) -> Record:

@@ -116,6 +116,7 @@ DEVICE = (
     _one("Fuse Melting Curve", "fuse_melting_curve"),
     _one("Fuse Clearing Curve", "fuse_clearing_curve"),
     _one("Back-up Fuse Curve", "backup_fuse_melting_curve"),
+    _one("Striker Trip", "blown_fuse_trip"),
     _one("Let-through I2t", "fuse_let_through_a2s", "A2s"),
     _one("Starter SCCR", "starter_short_circuit_rating_ka", "kA"),
     _one("Bus UV Scheme", "undervoltage_by_bus_scheme"),

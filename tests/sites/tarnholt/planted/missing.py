@@ -42,7 +42,7 @@ MISSING = (
     Missing("motor", lettered("VS-110"), "safe_stall_cold_s", "TBC", "asked of the maker"),
     Missing("motor", lettered("FD-10", "1234"), "driven_machine", "blank", "not entered"),
     Missing("relay", lettered("P-150"), "unbalance_base", "blank", "the export does not name the base"),
-    Missing("bus", ("MCC-44",), "fault_min_ka", "blank", "the study gives the greatest fault only"),
+    Missing("bus", ("MCC-44",), "fault_x_r_ratio", "blank", "the study gives no angle for this board"),
 )
 
 
