@@ -9,7 +9,7 @@ from audit.expression import rows
 from audit.expression.functions import Function, Operand
 from audit.expression.rows import RowFunction
 from audit.expression.values import UNKNOWN, YES, Value, folded_text
-from audit.vocabulary.units import DIMENSIONLESS
+from audit.vocabulary.units import DIMENSIONLESS, UNITS
 
 _SAME = Operand("value", "same")
 _PLAIN = Operand("result", "number", DIMENSIONLESS)
@@ -78,8 +78,8 @@ def _magnitude(value: NDArray[np.float64]) -> NDArray[np.float64]:
     return np.abs(value)
 
 
-def _of_rows(name: str, call: RowFunction, returns: Operand = _SAME, *further: Operand) -> Function:
-    return Function(name, call, (_SAME, *further), returns, of_rows=True)
+def _of_rows(name: str, call: RowFunction, returns: Operand = _SAME, *further: Operand, reads: str = "") -> Function:
+    return Function(name, call, (_SAME, *further), returns, of_rows=True, reads=reads)
 
 
 BUILTIN: dict[str, Function] = {
@@ -106,9 +106,28 @@ BUILTIN: dict[str, Function] = {
         _of_rows("total_of", rows.total),
         _of_rows("median_of", rows.median, _SAME, _COUNTED),
         _of_rows("count_of", rows.count, _PLAIN, _COUNTED),
-        _of_rows("greatest_deviation_of", rows.greatest_deviation, _PLAIN, _COUNTED),
-        _of_rows("greatest_robust_score_of", rows.greatest_robust_score, _PLAIN, _COUNTED),
-        _of_rows("greatest_spread_of_copies_of", rows.greatest_spread_of_copies, _PLAIN, _SAME, _COUNTED),
+        _of_rows(
+            "greatest_deviation_of",
+            rows.greatest_deviation,
+            Operand("deviation", "number", UNITS["pct"]),
+            _COUNTED,
+            reads="greatest deviation from the median of",
+        ),
+        _of_rows(
+            "greatest_robust_score_of",
+            rows.greatest_robust_score,
+            _PLAIN,
+            _COUNTED,
+            reads="greatest distance from the median, in scaled median absolute deviations, of",
+        ),
+        _of_rows(
+            "greatest_spread_of_copies_of",
+            rows.greatest_spread_of_copies,
+            _PLAIN,
+            _SAME,
+            _COUNTED,
+            reads="greatest ratio among three and more rows that share a figure, of",
+        ),
         _of_rows("any_of", rows.any_yes, Operand("any", "truth")),
     )
 }

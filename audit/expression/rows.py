@@ -140,13 +140,13 @@ def median(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats
 
 
 def greatest_deviation(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
-    """Greatest deviation from the median of the child rows, as a share of that median.
+    """Greatest deviation from the median of the child rows, in per cent of that median.
 
     A row alone deviates from nothing: none where its condition leaves out all others, else missing.
 
     >>> result, deciding = greatest_deviation([np.array([100.0, 100.0, 130.0])], np.array([0, 0, 0]), 1)
-    >>> round(result.item(), 3), deciding.item()
-    (0.3, 2)
+    >>> round(result.item(), 1), deciding.item()
+    (30.0, 2)
     """
     number = counted(values)
     middle = median([number], parent, parents)[0]
@@ -154,7 +154,7 @@ def greatest_deviation(values: list[Floats], parent: Integers, parents: int) -> 
     share = np.full(len(number), np.nan)
     with np.errstate(all="ignore"):
         own = middle[parent[linked]]
-        share[linked] = np.where(own != 0, np.abs(number[linked] - own) / np.abs(own), np.nan)
+        share[linked] = np.where(own != 0, 100 * np.abs(number[linked] - own) / np.abs(own), np.nan)
     alone = count([number], parent, parents)[0] < 2
     result, deciding = greatest([share], parent, parents)
     result[alone] = np.nan
