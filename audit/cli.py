@@ -49,6 +49,9 @@ def audit(
         bool, typer.Option("--json", help="Print the record on stdout, and nothing else there.")
     ] = False,
     show_all: Annotated[bool, typer.Option("--all", help="Print every finding, also long lists of like ones.")] = False,
+    previous: Annotated[
+        Path | None, typer.Option("--previous", metavar="RECORD", help="The record of the last audit.")
+    ] = None,
     on: Annotated[str | None, typer.Option("--on", metavar="DAY", help="The day of the audit; default today.")] = None,
 ) -> None:
     """Read a fleet, judge every motor, print the findings and write the record and the annotated workbooks."""
@@ -57,7 +60,7 @@ def audit(
     raise typer.Exit(
         run_audit(
             fleet, out=out, rules=rules, packs=pack or [], fail_on=fail_on, as_json=json_out, everything=show_all,
-            audited_on=_day(on),
+            audited_on=_day(on), previous=previous,
         )
     )  # fmt: skip
 

@@ -19,8 +19,10 @@ from audit.findings.audit import Audit
 from audit.findings.collect import unproven_and_wanted
 from audit.findings.finding import FindingCode
 from audit.findings.gather import breaches, in_order, of_ranges, with_exceptions
+from audit.findings.history import with_previous
 from audit.fleet.fleet import Fleet
 from audit.intake import read_fleet
+from audit.report.record.read import Record
 
 Progress = Callable[[str], None]
 
@@ -107,3 +109,12 @@ def audit_path(
     if progress is not None:
         progress("judging")
     return audit_fleet(fleet, catalogue, audited_on=audited_on or date.today(), packs=packs)
+
+
+def since_record(audit: Audit, record: Record) -> Audit:
+    """Give an audit that knows what an earlier record said: which findings are new, repeated, returned, cleared."""
+    before = None
+    if record.fleet is not None:
+        scope = audit.packs_in_scope
+        before = judge_fleet(record.fleet, audit.catalogue, audited_on=record.audited_on, packs=scope)
+    return with_previous(audit, record.content, before)

@@ -11,8 +11,9 @@ from pathlib import Path
 from audit.checks.entry import SEVERITIES
 from audit.commands.consoles import progress_console, table_console
 from audit.findings.audit import Audit
-from audit.pipeline import audit_path
+from audit.pipeline import audit_path, since_record
 from audit.refusal import Refusal
+from audit.report.record.read import read_record
 from audit.report.record.write import write_json, write_record
 from audit.report.terminal.show import show_audit
 from audit.report.workbook.write import write_workbooks
@@ -28,11 +29,13 @@ def run_audit(
     as_json: bool,
     everything: bool,
     audited_on: date | None,
+    previous: Path | None = None,
 ) -> int:
     """Audit one fleet, print and write; give the exit status."""
     if fail_on is not None and fail_on not in SEVERITIES:
         raise Refusal(f"--fail-on '{fail_on}' is not a severity. Accepted: {', '.join(SEVERITIES)}.")
     progress = progress_console()
+    earlier = read_record(previous) if previous is not None else None
     with progress.status("reading", spinner="line") as status:
         result = audit_path(
             fleet,
@@ -41,6 +44,8 @@ def run_audit(
             audited_on=audited_on,
             progress=lambda text: status.update(text) if progress.is_terminal else None,
         )
+        if earlier is not None:
+            result = since_record(result, earlier)
         if as_json:
             write_json(result, sys.stdout)
             return _status(result, fail_on)

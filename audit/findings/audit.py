@@ -13,6 +13,7 @@ from audit.checks.verdicts import VERDICT_NAMES, Outcome
 from audit.derivation.workings import Workings
 from audit.findings.collect import DatumWanted, UnprovenGroup
 from audit.findings.finding import FindingCode
+from audit.findings.past import Previous
 from audit.fleet.fleet import Fleet
 
 
@@ -31,6 +32,8 @@ class Audit:
     packs_in_scope: tuple[str, ...]
     packs_out_of_scope: tuple[str, ...]
     audited_on: date
+    previous: Previous | None = None
+    """What the record of an earlier audit says of this one, where one was given."""
 
     def counts(self) -> dict[str, int]:
         """Count verdicts over all checks."""
@@ -50,7 +53,7 @@ class Audit:
 
     def by_severity(self) -> dict[str, int]:
         """Count the findings of each severity."""
-        counts: dict[str, int] = {severity: 0 for severity in SEVERITIES}
+        counts: dict[str, int] = dict.fromkeys(SEVERITIES, 0)
         for code in self.codes:
             counts[self.outcomes[code.outcome].check.severity] += 1
         return counts

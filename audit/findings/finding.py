@@ -74,6 +74,10 @@ class Finding:
     provisional: bool
     setting_group: str
     status: Status = "open"
+    since: str = ""
+    """Day of the audit that found it first."""
+    audits: int = 1
+    """Number of audits that found it, this one with them."""
 
     @property
     def is_setting(self) -> bool:

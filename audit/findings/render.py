@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -20,6 +20,7 @@ from audit.expression.units import UnitCheck
 from audit.findings.audit import Audit
 from audit.findings.causes import causes_in_words
 from audit.findings.finding import Finding, FindingCell, FindingCode
+from audit.findings.past import identity_of
 from audit.fleet.column import NO_CELL
 from audit.vocabulary.quantities import Quantity
 from audit.vocabulary.units import DIMENSIONLESS, UNITS, Unit
@@ -58,9 +59,17 @@ class FindingRenderer:
     def finding(self, code: FindingCode) -> Finding:
         """Render one finding."""
         outcome = self.audit.outcomes[code.outcome]
-        if outcome.check.stage == "ranges":
-            return self._of_range(code, outcome.check)
-        return self._breach(code, outcome)
+        of_range = outcome.check.stage == "ranges"
+        return self._with_past(self._of_range(code, outcome.check) if of_range else self._breach(code, outcome))
+
+    def _with_past(self, finding: Finding) -> Finding:
+        """Add how the finding stands to the record of an earlier audit."""
+        previous = self.audit.previous
+        key = identity_of(finding.subject, finding.name, finding.check, finding.judges, finding.setting_group)
+        past = previous.pasts.get(key) if previous is not None else None
+        if past is None:
+            return replace(finding, since=self.audit.audited_on.isoformat())
+        return replace(finding, status=past.status, since=past.since, audits=past.audits)
 
     def _breach(self, code: FindingCode, outcome: Outcome) -> Finding:
         check = outcome.check

@@ -92,9 +92,10 @@ def drifts(workings: Workings) -> tuple[Drift, ...]:
     trends: dict[str, StartTrend] = {}
     for watched in WATCHED:
         if watched.value not in trends:
-            columns = [workings.home_column(name).values for name in ("start_moment", watched.value)]
+            moment = workings.home_column("start_moment").values
+            value = workings.home_column(watched.value).values
             voltage = workings.home_column("start_voltage_pct").values
-            trends[watched.value] = start_trend(*columns, voltage, parent, fleet.rows("motor"))
+            trends[watched.value] = start_trend(moment, value, voltage, parent, fleet.rows("motor"))
         found += _reaching(watched, trends[watched.value], workings)
     return tuple(sorted(found, key=lambda drift: (drift.reached_on, drift.motor, drift.setting)))
 

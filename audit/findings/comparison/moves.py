@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from typing import Literal
 
@@ -61,16 +61,18 @@ def margin_share_pct(judged: Judged) -> Floats:
 
 def moves(pair: Pair, share_pct: float) -> Iterator[Move]:
     """Give everything that moved in rows there on both sides: verdicts at all, figures by more than a share."""
-    before = outcomes_by_key(pair.before)
-    for key, outcome in outcomes_by_key(pair.after).items():
+    before, after = outcomes_by_key(pair.before), outcomes_by_key(pair.after)
+    for key, outcome in after.items():
         other = before.get(key)
         if other is not None and outcome.check.stage == "rows":
-            yield from _of_check(pair, other, outcome, share_pct)
+            yield from _of_check(pair, other, outcome, share_pct, nodes_of(outcome, after))
     for setting, band in pair.after.ranges.items():
         yield from _of_range(pair, pair.before.ranges.get(setting), band, share_pct)
 
 
-def _of_check(pair: Pair, before: Outcome, after: Outcome, share_pct: float) -> Iterator[Move]:
+def _of_check(
+    pair: Pair, before: Outcome, after: Outcome, share_pct: float, nodes: tuple[Node | None, ...]
+) -> Iterator[Move]:
     check = after.check
     rows = pair.row_before(check.subject)
     there = rows >= 0
@@ -78,9 +80,7 @@ def _of_check(pair: Pair, before: Outcome, after: Outcome, share_pct: float) -> 
     moved = there & (old != after.verdict)
     for row in np.flatnonzero(moved).tolist():
         names = VERDICT_NAMES[int(old[row])], VERDICT_NAMES[int(after.verdict[row])]
-        yield Move(
-            check.subject, row, "verdict", check.key, check.function, _setting(after), *names, nodes=_nodes(after)
-        )
+        yield Move(check.subject, row, "verdict", check.key, check.function, _setting(after), *names, nodes=nodes)
     judged = (MEETS, BREACH)
     settled = there & ~moved & np.isin(after.verdict, judged)
     for one, other in zip(after.judged, before.judged, strict=True):
@@ -112,12 +112,14 @@ def _setting(outcome: Outcome) -> str:
     return ""
 
 
-def _nodes(outcome: Outcome) -> tuple[Node | None, ...]:
+def nodes_of(outcome: Outcome, outcomes: Mapping[tuple[str, int], Outcome]) -> tuple[Node | None, ...]:
+    """Give what the verdict of a check rests on; where another finding replaces it, what that one rests on too."""
     nodes: list[Node | None] = [outcome.check.when]
     for judged in outcome.judged:
         requirement = judged.requirement
         nodes += [requirement.when, requirement.judged, requirement.bound, requirement.within]
-    return tuple(nodes)
+    other = outcomes.get((outcome.check.unless_found or "", 0))
+    return (*nodes, *nodes_of(other, {})) if other is not None else tuple(nodes)
 
 
 def _of_range(pair: Pair, before: SettingRange | None, after: SettingRange, share_pct: float) -> Iterator[Move]:

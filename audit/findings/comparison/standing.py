@@ -12,16 +12,13 @@ from audit.findings.comparison.alignment import Pair
 from audit.findings.comparison.changes import Changes
 from audit.findings.comparison.moves import outcomes_by_key
 from audit.findings.finding import FindingCode
+from audit.findings.past import Identity, identity_of
 from audit.findings.render import FindingRenderer, margin_pct
-from audit.fleet.folding import exact
 
 Standing = Literal["new", "gone", "still there", "worse", "better", "no longer provable"]
 STANDINGS: tuple[Standing, ...] = ("new", "worse", "no longer provable", "still there", "better", "gone")
 LEAST_STEP_PCT = 0.05
 """A margin that moves by less, in points, stays what it was: figures are shown to a tenth."""
-
-Identity = tuple[str, str, str, str, str]
-"""Subject, folded name, check, setting, setting group: never the folder, the row or the cell."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -50,7 +47,7 @@ def identity(audit: Audit, code: FindingCode) -> Identity:
     """Give what makes a finding the same finding in another audit."""
     check = audit.outcomes[code.outcome].check
     name = audit.fleet.tables[check.subject].keys[code.row]
-    return check.subject, exact(name), check.key, setting_of(audit, code), code.group
+    return identity_of(check.subject, name, check.key, setting_of(audit, code), code.group)
 
 
 def setting_of(audit: Audit, code: FindingCode) -> str:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import asdict
 from importlib.metadata import PackageNotFoundError, version
 from math import isfinite
 from typing import Any
@@ -14,6 +15,7 @@ from audit.checks.ranges import NO_CHECK
 from audit.findings.audit import Audit
 from audit.findings.finding import Finding
 from audit.findings.render import FindingRenderer
+from audit.findings.trends import drifts
 
 RECORD_VERSION = 2
 """1: findings and readings. 2: the values of the fleet beside them, and since when each finding stands."""
@@ -36,6 +38,7 @@ def head(audit: Audit) -> dict[str, Any]:
         "tool_version": tool_version(),
         "fleet": audit.fleet.site,
         "cautions": list(CAUTIONS),
+        "previous": previous(audit),
         "inputs": [{"file": item.file, "sha256": item.sha256} for item in audit.fleet.inputs],
         "rules": {
             "version": tool_version(),
@@ -103,6 +106,8 @@ def finding_part(finding: Finding) -> dict[str, Any]:
         "provisional": finding.provisional,
         "setting_group": finding.setting_group,
         "status": finding.status,
+        "since": finding.since,
+        "audits": finding.audits,
     }
 
 
@@ -111,6 +116,31 @@ def findings(audit: Audit) -> Iterator[dict[str, Any]]:
     renderer = FindingRenderer(audit)
     for finding in renderer.all():
         yield finding_part(finding)
+
+
+def previous(audit: Audit) -> dict[str, Any] | None:
+    """Give what was compared with an earlier record, None where none was given."""
+    if audit.previous is None:
+        return None
+    return {"audited_on": audit.previous.audited_on, "notices": list(audit.previous.notices)}
+
+
+def cleared(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give the findings of earlier audits that are not found any more."""
+    for one in audit.previous.cleared if audit.previous is not None else ():
+        yield asdict(one)
+
+
+def setting_changes(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give the settings that changed since the earlier record, and what explains each."""
+    for one in audit.previous.settings if audit.previous is not None else ():
+        yield asdict(one)
+
+
+def trends(audit: Audit) -> Iterator[dict[str, Any]]:
+    """Give the start times and start currents that drift toward a limit."""
+    for drift in drifts(audit.workings):
+        yield asdict(drift)
 
 
 def unproven(audit: Audit) -> Iterator[dict[str, Any]]:

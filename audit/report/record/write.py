@@ -17,9 +17,9 @@ from audit.report.record import parts
 from audit.report.record.values import VALUES_FILE, write_values
 
 CSV_COLUMNS = (
-    "severity", "status", "motor", "service", "bus", "cubicle", "relay", "subject", "name", "function", "check",
-    "says", "label", "present", "unit", "low", "high", "range_state", "margin_pct", "because", "remedy", "source",
-    "assumptions", "provisional", "setting_group", "file", "sheet", "cell", "key",
+    "severity", "status", "since", "audits", "motor", "service", "bus", "cubicle", "relay", "subject", "name",
+    "function", "check", "says", "label", "present", "unit", "low", "high", "range_state", "margin_pct", "because",
+    "remedy", "source", "assumptions", "provisional", "setting_group", "file", "sheet", "cell", "key",
 )  # fmt: skip
 DANGEROUS_FIRST = ("=", "+", "-", "@", "\t", "\r")
 
@@ -57,6 +57,9 @@ def write_json(audit: Audit, stream: IO[str]) -> None:
     """Write the record part by part, one finding a line."""
     lists: Mapping[str, Iterable[dict[str, Any]]] = {
         "findings": parts.findings(audit),
+        "cleared": parts.cleared(audit),
+        "setting_changes": parts.setting_changes(audit),
+        "trends": parts.trends(audit),
         "unproven": parts.unproven(audit),
         "ranges": parts.ranges(audit),
         "data_to_collect": parts.data_to_collect(audit),

@@ -14,6 +14,7 @@ from audit.checks.entry import SEVERITIES
 from audit.findings.audit import Audit
 from audit.findings.finding import Finding
 from audit.findings.render import FindingRenderer
+from audit.report.terminal.since import standing_word
 from audit.report.terminal.style import MEANING, STYLE, WIDE, counted, severity_word
 
 MOST_LINES = 10
@@ -61,6 +62,7 @@ def _merged(findings: Iterable[Finding]) -> list[tuple[list[str], Finding]]:
             name += f" ({finding.relay})"
         if finding.setting_group:
             name += f" (group {finding.setting_group})"
+        name += standing_word(finding)
         key = (finding.label, finding.present_text, finding.range_text)
         same_reason = lines.get((*key[:2], finding.because)) if not finding.range_text else None
         target = same_reason or lines.setdefault(

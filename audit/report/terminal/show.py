@@ -8,10 +8,11 @@ from pathlib import Path
 from rich.console import Console
 from rich.text import Text
 
-from audit.findings.audit import Audit
 from audit.cautions import SHORT_CAUTION
+from audit.findings.audit import Audit
 from audit.report.terminal.findings import print_findings
 from audit.report.terminal.lacks import print_complaints, print_data_to_collect
+from audit.report.terminal.since import print_since, print_trends
 from audit.report.terminal.summary import print_summary
 
 
@@ -20,6 +21,8 @@ def show_audit(audit: Audit, console: Console, written: Sequence[Path] = (), *, 
     print_complaints(audit, console)
     print_data_to_collect(audit, console)
     print_findings(audit, console, everything=everything)
+    print_trends(audit, console)
+    print_since(audit, console)
     console.print()
     console.rule(style="default")
     print_summary(audit, console)

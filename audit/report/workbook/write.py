@@ -28,11 +28,12 @@ from audit.report.workbook.sheets.findings import write_findings
 from audit.report.workbook.sheets.lists import write_checks, write_data_to_collect, write_inputs
 from audit.report.workbook.sheets.motors import write_motors
 from audit.report.workbook.sheets.ranges import write_ranges
+from audit.report.workbook.sheets.since import write_since
 from audit.report.workbook.sheets.work import write_work
 
 COVER, FINDINGS, WORK, MOTORS, RANGES = "Audit", "Findings", "Work", "Motors", "Ranges"
-DATA, INPUTS, CHECKS = "Data to collect", "Inputs", "Checks applied"
-SHEETS = (COVER, FINDINGS, WORK, MOTORS, RANGES, DATA, INPUTS, CHECKS)
+DATA, SINCE, INPUTS, CHECKS = "Data to collect", "Since last audit", "Inputs", "Checks applied"
+SHEETS = (COVER, FINDINGS, WORK, MOTORS, RANGES, DATA, SINCE, INPUTS, CHECKS)
 PATCHABLE = (".xlsx", ".xlsm")
 
 
@@ -123,6 +124,7 @@ def build_sheets(
         write_motors(audit, list(findings), sheet(MOTORS))
         write_ranges(audit, sheet(RANGES))
         write_data_to_collect(audit, sheet(DATA))
+        write_since(audit, sheet(SINCE))
         write_inputs(audit, sheet(INPUTS))
         write_checks(audit, sheet(CHECKS))
     return BuiltSheets(book, values)

@@ -13,9 +13,9 @@ from audit.report.workbook.sheets.layout import FILLS, LETTERS, MOST_LINKS, fill
 
 HEADINGS = (
     "", "bus", "cubicle", "motor", "relay", "function", "what is wrong", "judged", "present", "permissible",
-    "what to do", "cell", "service", "set by", "why", "assumptions", "source", "file", "check", "key",
+    "what to do", "cell", "service", "standing", "set by", "why", "assumptions", "source", "file", "check", "key",
 )  # fmt: skip
-WIDTHS = (4, 10, 9, 11, 12, 8, 44, 20, 10, 18, 34, 22, 24, 34, 50, 34, 34, 26, 34, 40)
+WIDTHS = (4, 10, 9, 11, 12, 8, 44, 20, 10, 18, 34, 22, 24, 22, 34, 50, 34, 34, 26, 34, 40)
 PRINTED = 12
 KEY = ", ".join(f"{letter} {severity}" for severity, letter in LETTERS.items())
 _CELL, _SEVERITY = 12, 1
@@ -78,6 +78,7 @@ def _row(finding: Finding) -> list[object]:
         finding.remedy,
         f"{place.sheet}!{place.cell}" if place else "",
         finding.service,
+        "" if finding.status == "open" else f"{finding.status}, since {finding.since}, audits: {finding.audits}",
         set_by(finding),
         finding.why,
         "; ".join(finding.assumptions),
