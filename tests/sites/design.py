@@ -22,8 +22,10 @@ from tests.sites.machine import (
     stall_times_s,
 )
 from tests.sites.plant import Record, Site, number
-from tests.sites.relay_settings import new_relay, set_motor_relay, trip_class_for
 from tests.sites.rounding import near, printed, up
+from tests.sites.settings.motor_relay import set_motor_relay
+from tests.sites.settings.overload import trip_class_for
+from tests.sites.settings.setter import new_relay
 from tests.sites.soft_start import SOFT_START_MULTIPLE, soft_start_time_s
 from tests.sites.start_records import StartBehaviour, simulate_starts
 from tests.sites.supply import FREQUENCY_HZ

@@ -13,7 +13,7 @@ from tests.sites.families import Family
 from tests.sites.machine import make_machine
 from tests.sites.plant import Record, Site, Value, number
 from tests.sites.rounding import printed
-from tests.sites.tarnholt.high_voltage import BREAKER, QUARRY, SMALL
+from tests.sites.tarnholt.areas import BREAKER, QUARRY, SMALL
 from tests.sites.tarnholt.planted.defect import shown
 from tests.sites.tarnholt.sample import Rows, sample_site
 

@@ -6,8 +6,11 @@ import numpy as np
 
 from tests.sites.design import add_family, settle_buses
 from tests.sites.plant import Site
-from tests.sites.tarnholt import high_voltage, low_voltage
 from tests.sites.tarnholt.buses import tarnholt_buses
+from tests.sites.tarnholt.families_3300 import FAMILIES_3300
+from tests.sites.tarnholt.families_6600 import FAMILIES_6600
+from tests.sites.tarnholt.families_overload import FAMILIES_OVERLOAD
+from tests.sites.tarnholt.families_relays import FAMILIES_690, FAMILIES_RELAY, FAMILIES_STARTED_SOFTLY
 
 SEED = 20261130
 
@@ -24,12 +27,12 @@ def sound_site() -> Site:
     site = Site("Tarnholt Quarry and Lime Works", buses=tarnholt_buses())
     random = np.random.default_rng(SEED)
     for families in (
-        high_voltage.FAMILIES_6600,
-        high_voltage.FAMILIES_3300,
-        low_voltage.FAMILIES_690,
-        low_voltage.FAMILIES_RELAY,
-        low_voltage.FAMILIES_OVERLOAD,
-        low_voltage.FAMILIES_STARTED_SOFTLY,
+        FAMILIES_6600,
+        FAMILIES_3300,
+        FAMILIES_690,
+        FAMILIES_RELAY,
+        FAMILIES_OVERLOAD,
+        FAMILIES_STARTED_SOFTLY,
     ):
         for family in families:
             add_family(site, family, random)

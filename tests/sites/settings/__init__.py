@@ -1,0 +1,1 @@
+"""Settings of the relays of invented sites, as a careful engineer chooses them."""
