@@ -38,7 +38,9 @@ def _day(text: str | None) -> date | None:
 
 @app.command()
 def audit(
-    fleet: FleetPath,
+    fleets: Annotated[
+        list[Path], typer.Argument(metavar="FLEET...", help="A folder of workbooks, or one workbook; several sites.")
+    ],
     out: OutFolder = None,
     rules: RulesFolder = None,
     pack: Annotated[list[str] | None, typer.Option("--pack", metavar="NAME", help="Bring a pack into scope.")] = None,
@@ -56,10 +58,18 @@ def audit(
 ) -> None:
     """Read a fleet, judge every motor, print the findings and write the record and the annotated workbooks."""
     from audit.commands.audit import run_audit
+    from audit.commands.sites import run_sites
 
+    if len(fleets) > 1:
+        raise typer.Exit(
+            run_sites(
+                fleets, out=out, rules=rules, packs=pack or [], fail_on=fail_on, as_json=json_out,
+                everything=show_all, audited_on=_day(on), previous=previous,
+            )
+        )  # fmt: skip
     raise typer.Exit(
         run_audit(
-            fleet, out=out, rules=rules, packs=pack or [], fail_on=fail_on, as_json=json_out, everything=show_all,
+            fleets[0], out=out, rules=rules, packs=pack or [], fail_on=fail_on, as_json=json_out, everything=show_all,
             audited_on=_day(on), previous=previous,
         )
     )  # fmt: skip
@@ -108,6 +118,26 @@ def compare(
             as_json=json_out, everything=show_all, audited_on=_day(on),
         )
     )  # fmt: skip
+
+
+@app.command()
+def closeout(
+    returned: Annotated[Path, typer.Argument(metavar="RETURNED", help="The workbook that came back, filled in.")],
+    fleet: FleetPath,
+    settings: Annotated[
+        Path | None,
+        typer.Option("--settings", metavar="NEW_EXPORT", help="Settings read from the relays after the work."),
+    ] = None,
+    out: Annotated[
+        Path | None, typer.Option("--out", metavar="DIR", help="Where to write; default closeout-<site>.")
+    ] = None,
+    rules: RulesFolder = None,
+    on: Annotated[str | None, typer.Option("--on", metavar="DAY", help="The day of the close-out.")] = None,
+) -> None:
+    """Judge what the contractor left, say what is closed and what is not; exit 1 where something is not closed."""
+    from audit.commands.closeout import run_closeout
+
+    raise typer.Exit(run_closeout(returned, fleet, settings=settings, out=out, rules=rules, on=_day(on)))
 
 
 @app.command()
