@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable
+from dataclasses import replace
 from datetime import date
 from pathlib import Path
 
@@ -20,6 +21,7 @@ from audit.findings.collect import unproven_and_wanted
 from audit.findings.finding import FindingCode
 from audit.findings.gather import breaches, in_order, of_ranges, with_exceptions
 from audit.findings.history import with_previous
+from audit.findings.other_groups import as_if_active, breaches_of_group
 from audit.fleet.fleet import Fleet
 from audit.intake import read_fleet
 from audit.report.record.read import Record
@@ -63,7 +65,7 @@ def judge_fleet(grouped: Fleet, catalogue: Catalogue, *, audited_on: date, packs
         if check.stage == "ranges":
             codes += of_ranges(number, check, ranges, workings)
     unproven, wanted = unproven_and_wanted(outcomes, workings)
-    return Audit(
+    audit = Audit(
         fleet=grouped,
         catalogue=catalogue,
         workings=workings,
@@ -76,6 +78,21 @@ def judge_fleet(grouped: Fleet, catalogue: Catalogue, *, audited_on: date, packs
         packs_out_of_scope=tuple(name for name in catalogue.packs() if name not in scope),
         audited_on=audited_on,
     )
+    return _with_other_groups(audit, checks)
+
+
+def _with_other_groups(audit: Audit, checks: list[Check]) -> Audit:
+    """Judge each other setting group that can be selected, and add what breaks in it alone."""
+    groups: dict[str, Audit] = {}
+    codes = list(audit.codes)
+    for name, rows in audit.fleet.other_groups:
+        fleet = as_if_active(audit.fleet, rows)
+        workings = _workings(fleet, audit.catalogue, audit.audited_on)
+        outcomes = _judged(checks, workings)
+        ranges = permissible_ranges(outcomes, workings)
+        codes += breaches_of_group(name, rows, outcomes, audit.codes, audit.catalogue)
+        groups[name] = replace(audit, fleet=fleet, workings=workings, outcomes=tuple(outcomes), ranges=ranges, codes=())
+    return replace(audit, codes=in_order(codes, audit.outcomes), other_groups=groups) if groups else audit
 
 
 def _workings(fleet: Fleet, catalogue: Catalogue, audited_on: date) -> Workings:

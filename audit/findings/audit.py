@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from datetime import date
 
 from audit.checks.catalogue import Catalogue
@@ -32,6 +32,8 @@ class Audit:
     packs_in_scope: tuple[str, ...]
     packs_out_of_scope: tuple[str, ...]
     audited_on: date
+    other_groups: Mapping[str, Audit] = field(default_factory=dict)
+    """By name the other setting groups that can be selected, each judged as if it were the active one."""
     previous: Previous | None = None
     """What the record of an earlier audit says of this one, where one was given."""
 

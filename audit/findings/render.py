@@ -49,6 +49,7 @@ class FindingRenderer:
     def __init__(self, audit: Audit) -> None:
         self.audit = audit
         self.trace = Trace(audit.workings)
+        self._groups = {name: FindingRenderer(group) for name, group in audit.other_groups.items()}
         self._meanings = lookup_for(audit.workings.quantities, audit.workings.limits)
 
     def all(self) -> Iterator[Finding]:
@@ -58,9 +59,10 @@ class FindingRenderer:
 
     def finding(self, code: FindingCode) -> Finding:
         """Render one finding."""
-        outcome = self.audit.outcomes[code.outcome]
+        of_group = self._groups.get(code.group, self)
+        outcome = of_group.audit.outcomes[code.outcome]
         of_range = outcome.check.stage == "ranges"
-        return self._with_past(self._of_range(code, outcome.check) if of_range else self._breach(code, outcome))
+        return self._with_past(self._of_range(code, outcome.check) if of_range else of_group._breach(code, outcome))
 
     def _with_past(self, finding: Finding) -> Finding:
         """Add how the finding stands to the record of an earlier audit."""
