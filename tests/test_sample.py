@@ -18,7 +18,6 @@ from audit.rule_folder import sample_folder
 
 AUDITED_ON = date(2026, 11, 30)
 SAMPLE = sample_folder()
-EXPECTED = SAMPLE / "expected"
 
 
 def table(path: Path) -> list[dict[str, str]]:
@@ -43,20 +42,29 @@ def found(audit: Audit) -> Counter[tuple[str, str, str]]:
     )
 
 
+def settled(planted: list[dict[str, str]], seen: Counter[tuple[str, str, str]]) -> Counter[tuple[str, str, str]]:
+    """Give the planted findings; where a group's finding may name any of several motors, the one that was named."""
+    result: Counter[tuple[str, str, str]] = Counter()
+    for row in planted:
+        options = [(name.strip(), row["check"], row["severity"]) for name in row["subject_key"].split(";")]
+        result[next((option for option in options if option in seen), options[0])] += 1
+    return result
+
+
 def test_the_findings_of_the_sample_are_the_planted_defects(sample: Audit) -> None:
-    rows = table(EXPECTED / "planted_defects.csv")
-    planted = Counter((row["subject_key"], row["check"], row["severity"]) for row in rows)
-    assert sorted((found(sample) - planted).items()) == [], "found, not planted"
-    assert sorted((planted - found(sample)).items()) == [], "planted, not found"
+    seen = found(sample)
+    planted = settled(table(SAMPLE / "planted_defects.csv"), seen)
+    assert sorted((seen - planted).items()) == [], "found, not planted"
+    assert sorted((planted - seen).items()) == [], "planted, not found"
 
 
 def test_defects_are_planted_over_at_least_thirty_checks() -> None:
-    rows = table(EXPECTED / "planted_defects.csv")
+    rows = table(SAMPLE / "planted_defects.csv")
     assert len({row["check"] for row in rows}) >= 30
 
 
 def test_the_sound_twin_gives_nothing_but_the_observations_that_the_table_names(sound: Audit) -> None:
-    rows = table(EXPECTED / "sound_observations.csv")
+    rows = table(SAMPLE / "sound" / "expected_observations.csv")
     expected = Counter((row["subject_key"], row["check"], "observation") for row in rows)
     assert found(sound) == expected
 
