@@ -59,13 +59,18 @@ def match(work: Sequence[WorkRow], sheet: ReturnedSheet, stamp: str, judged_from
     reader = _Reader(sheet, work, judged_from)
     matched = [reader.matched(row, by_key.get(row.key, [])) for row in work]
     remarks = list(sheet.remarks)
-    if sheet.stamps and stamp not in sheet.stamps:
+    if sheet.stamps and _state_of(stamp) not in [_state_of(one) for one in sheet.stamps]:
         remarks.append(
-            f"the sheet was issued from another state of the fleet ({sheet.stamps[0]}, now {stamp}): rows whose "
-            "present value or range moved since say so"
+            f"the sheet was issued from another state of the fleet or by other rules ({sheet.stamps[0]}, now {stamp}): "
+            "rows whose present value or range moved since say so"
         )
     known = {row.key for row in work}
     return Matches(tuple(_shared(matched)), tuple(key for key in by_key if key not in known), tuple(remarks))
+
+
+def _state_of(stamp: str) -> str:
+    """Give the part of a stamp that tells the state of the fleet, without the day."""
+    return stamp.rpartition(":")[2]
 
 
 def same_value(one: float, other: float, written: WrittenSetting, steps: float = 1.0) -> bool:

@@ -29,6 +29,8 @@ class WorkRow:
 
     finding: Finding
     relay_row: int
+    relay_key: str
+    """The relay, or its setting group, as the table of relays names it."""
     setting: str
     """The quantity whose cell is to be changed."""
     function: str
@@ -132,6 +134,7 @@ class _Maker:
         return WorkRow(
             finding=finding,
             relay_row=relay_row,
+            relay_key=self.audit.fleet.tables["relay"].keys[relay_row],
             setting=quantity.name,
             function=_function(quantity, finding),
             label=quantity.label,

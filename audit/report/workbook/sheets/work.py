@@ -169,7 +169,7 @@ def _values(row: WorkRow) -> dict[str, object]:
         "wrong": f"{finding.says}: {because}{state}",
         "why": finding.why,
         "source": finding.source,
-        "cell": _cell(place),
+        "cell": place_words(place),
         "proposed": row.proposal.value if row.proposal.value is not None else "none",
         "how": row.proposal.how,
         "issued_unit": issued_unit,
@@ -192,7 +192,8 @@ def _place(row: WorkRow) -> Place | FindingCell | None:
     return row.written.place or judged_cell(row.finding)
 
 
-def _cell(place: Place | FindingCell | None) -> str:
+def place_words(place: Place | FindingCell | None) -> str:
+    """Write where a cell stands."""
     return f"{place.file}\n{place.sheet}!{place.cell}" if place is not None else ""
 
 

@@ -1,0 +1,1 @@
+"""What the close-out hands over: tables on the terminal, closeout.json, and a workbook to sign."""
