@@ -37,7 +37,7 @@ def show_sites(summary: SitesSummary, console: Console, written: Sequence[Path],
             console,
             f"In common · {counted(len(summary.common), 'check')} at two sites or more, {everywhere} everywhere",
         )
-        common = [
+        common: list[list[str | Text]] = [
             [one.function, severity_word(one.severity), one.says, *(_count(one.by_site.get(site, 0)) for site in sites)]
             for one in summary.common[:most]
         ]
