@@ -11,6 +11,9 @@ from openpyxl import load_workbook
 from tests.sites.write_sample import SAMPLE_FLEET, write_all
 
 
+WORKED_OUT_BY_HAND = {Path("after_modification") / "expected_comparison.csv"}
+
+
 @pytest.fixture(scope="module")
 def written(tmp_path_factory: pytest.TempPathFactory) -> Path:
     """Write everything anew."""
@@ -36,7 +39,7 @@ def test_committed_files_hold_what_the_generator_writes(written: Path):
 def test_no_workbook_is_left_over_from_an_earlier_generator(written: Path):
     kinds = ("*.xlsx", "*.csv")
     committed = {path.relative_to(SAMPLE_FLEET) for kind in kinds for path in SAMPLE_FLEET.rglob(kind)}
-    assert committed == {path.relative_to(written) for kind in kinds for path in written.rglob(kind)}
+    assert committed - WORKED_OUT_BY_HAND == {path.relative_to(written) for kind in kinds for path in written.rglob(kind)}
 
 
 def test_planted_defects_cover_many_checks():

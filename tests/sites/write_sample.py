@@ -40,7 +40,7 @@ def write_all(folder: Path) -> None:
     )
     modified = modified_site()
     after = folder / "after_modification"
-    write_site(modified.site, after, ("changes.csv", "expected_findings.csv"))
+    write_site(modified.site, after, ("changes.csv", "expected_findings.csv", "expected_comparison.csv"))
     write_table(modified.changes, after / "changes.csv", ("subject", "subject_key", "datum", "before", "after", "why"))
     write_table(modified.findings, after / "expected_findings.csv", ("subject_key", "check", "turn", "cause"))
 
