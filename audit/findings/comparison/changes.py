@@ -89,12 +89,16 @@ class Changes:
 
     @cached_property
     def rows(self) -> tuple[RowChange, ...]:
-        """Give the motors, relays and buses that were added or removed."""
+        """Give the motors, relays and buses that were added or removed.
+
+        Settings that stand in the motor's own row make no relay of their own: they come and go with the motor.
+        """
         found: list[RowChange] = []
         for subject in SUBJECTS:
             found += [self._row(subject, row, "added") for row in self.pair.added(subject)]
             found += [self._row(subject, row, "removed") for row in self.pair.removed(subject)]
-        return tuple(found)
+        motors = {(row.name, row.kind) for row in found if row.subject == "motor"}
+        return tuple(row for row in found if row.subject != "relay" or (row.name, row.kind) not in motors)
 
     def cause(self, name: str, row: int) -> tuple[str, ...]:
         """Give the changed data that a value follows whose own cell did not change; none where the cell changed."""

@@ -48,9 +48,10 @@ def _plain(audit: Audit, name: str) -> Iterator[object]:
 
 
 def starts_changed(before: Audit, after: Audit) -> dict[str, StartsChange]:
-    """Give for each motor (by its folded tag) whose starts differ how they do."""
+    """Give for each motor there on both sides (by its folded tag) whose starts differ how they do."""
     old, now = _starts(before), _starts(after)
-    names = {exact(key): key for audit in (before, after) for key in audit.fleet.tables["motor"].keys}
+    there = {exact(key) for key in before.fleet.tables["motor"].keys}
+    names = {exact(key): key for key in after.fleet.tables["motor"].keys if exact(key) in there}
     new: Counter[str] = Counter()
     gone: Counter[str] = Counter()
     for start in old.keys() | now.keys():
