@@ -83,9 +83,7 @@ def transfer_resultant_pu(source_pu: ArrayLike, residual_pu: ArrayLike, angle_de
     return floats(np.sqrt(np.maximum(square, 0.0)))
 
 
-def greatest_transfer_angle_deg(
-    source_pu: ArrayLike, residual_pu: ArrayLike, resultant_limit_pu: ArrayLike
-) -> Floats:
+def greatest_transfer_angle_deg(source_pu: ArrayLike, residual_pu: ArrayLike, resultant_limit_pu: ArrayLike) -> Floats:
     """Angle up to which a reclosure stays within a resultant.
 
     d = arccos((Es^2 + Em^2 - L^2) / (2 * Es * Em))

@@ -20,9 +20,7 @@ ALUMINIUM_K = {"PVC": 76.0, "XLPE": 94.0, "EPR": 94.0}
 ALUMINIUM_K_LARGE = {"PVC": 68.0, "XLPE": 94.0, "EPR": 94.0}
 
 
-def adiabatic_constant(
-    material: ArrayLike, initial_temperature_c: ArrayLike, final_temperature_c: ArrayLike
-) -> Floats:
+def adiabatic_constant(material: ArrayLike, initial_temperature_c: ArrayLike, final_temperature_c: ArrayLike) -> Floats:
     """Constant k of a conductor between two temperatures.
 
     k = K * sqrt(ln(1 + (Tf - Ti) / (beta + Ti))); K 226, beta 234.5 copper; K 148, beta 228 aluminium
@@ -154,9 +152,7 @@ def adiabatic_constant_icea(
     return floats(np.sqrt(look_up(material, ICEA_CONSTANT) * hotter) / MM2_PER_CIRCULAR_MIL)
 
 
-def cable_withstand_a2s(
-    section_mm2: ArrayLike, runs: ArrayLike, material: ArrayLike, insulation: ArrayLike
-) -> Floats:
+def cable_withstand_a2s(section_mm2: ArrayLike, runs: ArrayLike, material: ArrayLike, insulation: ArrayLike) -> Floats:
     """Heat that the conductors of a cable bear, as the square of current times time.
 
     k^2 * (n * S)^2, k as printed for conductor and insulation
@@ -233,9 +229,7 @@ def longest_clearing_time_s(fault_a: ArrayLike, cable_withstand_a2s: ArrayLike) 
     return floats(above_zero(cable_withstand_a2s) / above_zero(fault_a) ** 2)
 
 
-def least_section_mm2(
-    fault_a: ArrayLike, clearing_time_s: ArrayLike, adiabatic_constant: ArrayLike
-) -> Floats:
+def least_section_mm2(fault_a: ArrayLike, clearing_time_s: ArrayLike, adiabatic_constant: ArrayLike) -> Floats:
     """Least total cross-section that bears a fault current until it is cleared.
 
     S = I * sqrt(t) / k

@@ -73,9 +73,7 @@ def least_earth_fault_a(
     IEC 60364-4-41, fault loop of a TN system.
     """
     phase = cable_resistance_ohm(length_m, section_mm2, material, runs, conductor_temperature_c)
-    protective = cable_resistance_ohm(
-        length_m, protective_section_mm2, material, runs, conductor_temperature_c
-    )
+    protective = cable_resistance_ohm(length_m, protective_section_mm2, material, runs, conductor_temperature_c)
     reactance = cable_reactance_ohm(length_m, reactance_ohm_per_km, runs)
     return terminal_three_phase_fault_a(
         bus_earth_fault_ka, bus_x_to_r_ratio, voltage_v, phase + protective, 2 * reactance

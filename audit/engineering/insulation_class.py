@@ -12,9 +12,7 @@ def _by_letter_and_number(figures: dict[str, float]) -> dict[str, float]:
     return figures | {numbers[letter]: figure for letter, figure in figures.items()}
 
 
-CLASS_TEMPERATURE_C = _by_letter_and_number(
-    {"A": 105.0, "E": 120.0, "B": 130.0, "F": 155.0, "H": 180.0, "N": 200.0}
-)
+CLASS_TEMPERATURE_C = _by_letter_and_number({"A": 105.0, "E": 120.0, "B": 130.0, "F": 155.0, "H": 180.0, "N": 200.0})
 RISE_BY_RESISTANCE_K = _by_letter_and_number({"A": 60.0, "E": 75.0, "B": 80.0, "F": 105.0, "H": 125.0})
 RISE_BY_DETECTOR_K = _by_letter_and_number({"B": 85.0, "F": 110.0, "H": 130.0})
 SLOW_OVERLOAD_C = _by_letter_and_number({"B": 145.0, "F": 170.0, "H": 195.0, "N": 215.0})

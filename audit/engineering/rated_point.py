@@ -55,9 +55,7 @@ def full_load_from_power_a(
     """
     efficiency = above_zero(within(efficiency_pct, 0.0, 100.0)) / 100
     factor = above_zero(within(power_factor, 0.0, 1.0))
-    return floats(
-        above_zero(rated_power_kw) * 1000 / (SQRT3 * above_zero(rated_voltage_v) * efficiency * factor)
-    )
+    return floats(above_zero(rated_power_kw) * 1000 / (SQRT3 * above_zero(rated_voltage_v) * efficiency * factor))
 
 
 def efficiency_times_power_factor(

@@ -8,9 +8,7 @@ from numpy.typing import ArrayLike
 from audit.engineering.arrays import Floats, present, together
 
 
-def stall_time_at_current_s(
-    stall_time_s: ArrayLike, rated_current_a: ArrayLike, current_a: ArrayLike
-) -> Floats:
+def stall_time_at_current_s(stall_time_s: ArrayLike, rated_current_a: ArrayLike, current_a: ArrayLike) -> Floats:
     """Safe stall time at another current than the one it is stated for.
 
     t2 = t1 * (I1 / I2)^2

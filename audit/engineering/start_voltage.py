@@ -64,9 +64,7 @@ def voltage_at_start_current_v(
     Circuit theory; IEEE 399.
     """
     supply = above_zero(supply_voltage_v)
-    impedance = _supply(supply, fault_ka, x_to_r_ratio) + _impedance(
-        cable_resistance_ohm, cable_reactance_ohm
-    )
+    impedance = _supply(supply, fault_ka, x_to_r_ratio) + _impedance(cable_resistance_ohm, cable_reactance_ohm)
     current = zero_or_more(start_current_a) * np.exp(-1j * np.arccos(within(start_power_factor, 0.0, 1.0)))
     drop = SQRT3 * current * impedance
     return np.where(np.abs(drop) <= supply, np.abs(supply - drop), np.nan)

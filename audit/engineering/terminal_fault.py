@@ -194,9 +194,7 @@ def least_phase_to_phase_fault_a(
     """
     resistance = cable_resistance_ohm(length_m, section_mm2, material, runs, conductor_temperature_c)
     reactance = cable_reactance_ohm(length_m, reactance_ohm_per_km, runs)
-    three_phase = terminal_three_phase_fault_a(
-        bus_minimum_fault_ka, bus_x_to_r_ratio, voltage_v, resistance, reactance
-    )
+    three_phase = terminal_three_phase_fault_a(bus_minimum_fault_ka, bus_x_to_r_ratio, voltage_v, resistance, reactance)
     return phase_to_phase_fault_a(three_phase)
 
 
@@ -256,6 +254,4 @@ def greatest_three_phase_fault_a(
     """
     resistance = cable_resistance_ohm(length_m, section_mm2, material, runs, 20.0)
     reactance = cable_reactance_ohm(length_m, reactance_ohm_per_km, runs)
-    return terminal_three_phase_fault_a(
-        bus_maximum_fault_ka, bus_x_to_r_ratio, voltage_v, resistance, reactance
-    )
+    return terminal_three_phase_fault_a(bus_maximum_fault_ka, bus_x_to_r_ratio, voltage_v, resistance, reactance)

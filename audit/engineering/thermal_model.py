@@ -161,9 +161,7 @@ def thermal_trip_time_from_level_s(
     return _time_to_trip_s(*together(level_pu, current_a, pickup_a, time_constant_s))
 
 
-def steady_thermal_level_pu(
-    current_a: ArrayLike, pickup_a: ArrayLike, running_weight: ArrayLike = 1.0
-) -> Floats:
+def steady_thermal_level_pu(current_a: ArrayLike, pickup_a: ArrayLike, running_weight: ArrayLike = 1.0) -> Floats:
     """Thermal level that a steady load settles at.
 
     theta = w * (I / Ip)^2

@@ -13,9 +13,7 @@ CURVE_DERATING = np.array([1.0, 1.0, 0.97, 0.95, 0.93, 0.89, 0.85, 0.82, 0.78, 0
 CURVE_ENDS_PCT = 5.0
 
 
-def negative_sequence_current_pct(
-    voltage_unbalance_pct: ArrayLike, locked_rotor_multiple: ArrayLike
-) -> Floats:
+def negative_sequence_current_pct(voltage_unbalance_pct: ArrayLike, locked_rotor_multiple: ArrayLike) -> Floats:
     """Negative-sequence current from voltage unbalance, in per cent of full-load current.
 
     I2 = u2 * ILR / IFL

@@ -53,7 +53,9 @@ def render(node: Node, name_of: Render, words: Callable[[str], str] = lambda fun
             return f"{render(left, name_of, words)} {_SIGNS[operator]} {render(right, name_of, words)}"
         case Join(operator, operands):
             inner = [render(o, name_of, words) for o in operands]
-            return f" {operator} ".join(f"({t})" if isinstance(o, Join) else t for o, t in zip(operands, inner, strict=True))
+            return f" {operator} ".join(
+                f"({t})" if isinstance(o, Join) else t for o, t in zip(operands, inner, strict=True)
+            )
         case Call(function, operands):
             inner = [render(operand, name_of, words) for operand in operands]
             return f"{words(function)} ({'; '.join(inner)})"

@@ -8,9 +8,9 @@ from dataclasses import dataclass, field
 import numpy as np
 import pandas as pd
 
-from audit.refusal import Refusal
 from audit.fleet.addresses import SheetBook
 from audit.fleet.fleet import Complaint, InputFile, Question
+from audit.refusal import Refusal
 
 READING_COLUMNS: Mapping[str, str] = {
     "table": "object",

@@ -67,9 +67,7 @@ def test_printed_constants_are_the_rounded_formula(material, insulation, section
 @given(st.floats(100, 50_000), st.floats(0.1, 5), st.sampled_from([115.0, 143.0, 76.0, 94.0]))
 def test_cable_of_least_section_bears_the_fault_just_that_long(fault_a, time_s, constant):
     section = least_section_mm2(fault_a, time_s, constant)
-    assert longest_clearing_time_s(fault_a, (constant * section) ** 2).item() == pytest.approx(
-        time_s, rel=1e-9
-    )
+    assert longest_clearing_time_s(fault_a, (constant * section) ** 2).item() == pytest.approx(time_s, rel=1e-9)
 
 
 def test_two_runs_bear_four_times_the_heat():

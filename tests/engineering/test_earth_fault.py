@@ -24,9 +24,7 @@ voltages = st.floats(400, 15_000)
 
 
 @given(voltages, st.floats(1, 2000), st.floats(0.01, 5), st.sampled_from([50.0, 60.0]))
-def test_bolted_fault_draws_resistor_and_charging_current_in_quadrature(
-    voltage, resistance, capacitance, hertz
-):
+def test_bolted_fault_draws_resistor_and_charging_current_in_quadrature(voltage, resistance, capacitance, hertz):
     # phase a at earth: the neutral rises to -Ea, the sound phases to line voltage against earth
     a = np.exp(2j * np.pi / 3)
     phases = voltage / np.sqrt(3) * np.array([1, a**2, a])
@@ -38,9 +36,7 @@ def test_bolted_fault_draws_resistor_and_charging_current_in_quadrature(
     own = charging_current_a(voltage, hertz, capacitance)
     assert resistor.item() == pytest.approx(abs(through_resistor), rel=1e-9)
     assert own.item() == pytest.approx(abs(charging), rel=1e-9)
-    assert earth_fault_current_a(resistor, own).item() == pytest.approx(
-        abs(charging + through_resistor), rel=1e-9
-    )
+    assert earth_fault_current_a(resistor, own).item() == pytest.approx(abs(charging + through_resistor), rel=1e-9)
 
 
 @given(voltages, st.floats(1, 2000))

@@ -129,9 +129,7 @@ FORMULAS = [
     formula
     for module in MODULES
     for name, formula in vars(module).items()
-    if isinstance(formula, FunctionType)
-    and formula.__module__ == module.__name__
-    and not name.startswith("_")
+    if isinstance(formula, FunctionType) and formula.__module__ == module.__name__ and not name.startswith("_")
 ]
 INPUTS = [(formula, name) for formula in FORMULAS for name in inspect.signature(formula).parameters]
 

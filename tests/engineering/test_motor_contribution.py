@@ -33,8 +33,6 @@ def test_contribution_grows_with_the_locked_rotor_current(current, times):
         (100, 1001, 2, 0.15),  # above it no longer
     ],
 )
-def test_resistance_over_reactance_goes_by_voltage_and_power_per_pole_pair(
-    power_kw, voltage_v, poles, r_to_x
-):
+def test_resistance_over_reactance_goes_by_voltage_and_power_per_pole_pair(power_kw, voltage_v, poles, r_to_x):
     # IEC 60909-0, table of asynchronous motors
     assert motor_x_to_r_ratio(power_kw, voltage_v, poles).item() == pytest.approx(1 / r_to_x, rel=1e-12)

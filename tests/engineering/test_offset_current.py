@@ -46,9 +46,7 @@ def test_first_peak_is_that_of_the_differential_equation(x_to_r):
 @pytest.mark.parametrize("x_to_r", X_TO_R)
 def test_no_other_closing_angle_gives_a_higher_first_peak(x_to_r):
     angles = np.linspace(0, 2 * pi, 2001)
-    peaks = [
-        np.abs(current_of_the_circuit(x_to_r, closing)(angles)[0]).max() for closing in (-0.3, 0.2, 0.8, 1.6)
-    ]
+    peaks = [np.abs(current_of_the_circuit(x_to_r, closing)(angles)[0]).max() for closing in (-0.3, 0.2, 0.8, 1.6)]
     assert max(peaks) < offset_first_peak_ratio(x_to_r).item()
 
 
@@ -110,9 +108,7 @@ def test_factor_that_no_circuit_can_have_has_no_x_to_r():
 @given(st.floats(0.01, 1))
 def test_power_factor_and_x_to_r_are_cosine_and_tangent_of_one_angle(power_factor):
     angle = np.arccos(power_factor)
-    assert x_to_r_from_power_factor_ratio(power_factor).item() == pytest.approx(
-        np.tan(angle), abs=1e-7, rel=1e-9
-    )
+    assert x_to_r_from_power_factor_ratio(power_factor).item() == pytest.approx(np.tan(angle), abs=1e-7, rel=1e-9)
 
 
 def test_time_constant_is_that_of_inductance_over_resistance():
@@ -123,9 +119,7 @@ def test_time_constant_is_that_of_inductance_over_resistance():
 @given(st.floats(3, 100))
 def test_peak_factor_of_the_standard_lies_close_to_the_exact_first_peak(x_to_r):
     # IEC 60909 fits its factor to the exact peak with a constant frequency: within 0.6 per cent from X/R 3 up
-    assert sqrt(2) * short_circuit_peak_ratio(x_to_r) == pytest.approx(
-        offset_first_peak_ratio(x_to_r), rel=0.006
-    )
+    assert sqrt(2) * short_circuit_peak_ratio(x_to_r) == pytest.approx(offset_first_peak_ratio(x_to_r), rel=0.006)
 
 
 def test_peak_current_is_factor_times_amplitude():

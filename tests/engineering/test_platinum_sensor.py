@@ -19,9 +19,7 @@ from audit.engineering.platinum_sensor import (
 
 @given(st.floats(-200, 850))
 def test_temperature_comes_back_from_its_resistance(temperature):
-    assert platinum_temperature_c(platinum_resistance_ohm(temperature)).item() == pytest.approx(
-        temperature, abs=1e-6
-    )
+    assert platinum_temperature_c(platinum_resistance_ohm(temperature)).item() == pytest.approx(temperature, abs=1e-6)
 
 
 @pytest.mark.parametrize("resistance", [20.0, 60.26, 99.9, 138.51, 300.0])

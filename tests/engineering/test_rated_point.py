@@ -25,18 +25,12 @@ even_poles = st.sampled_from([2, 4, 6, 8, 10, 12, 14, 16])
 
 @given(powers)
 def test_horsepower_agrees_with_the_unit_library(power):
-    assert power_from_hp_kw(power).item() == pytest.approx(
-        UNITS.Quantity(power, "horsepower").to("kW").magnitude
-    )
-    assert power_from_kw_hp(power).item() == pytest.approx(
-        UNITS.Quantity(power, "kW").to("horsepower").magnitude
-    )
+    assert power_from_hp_kw(power).item() == pytest.approx(UNITS.Quantity(power, "horsepower").to("kW").magnitude)
+    assert power_from_kw_hp(power).item() == pytest.approx(UNITS.Quantity(power, "kW").to("horsepower").magnitude)
 
 
 @given(powers, st.floats(200, 15_000), st.floats(70, 98), st.floats(0.5, 0.95))
-def test_plate_implies_the_efficiency_and_power_factor_it_was_computed_from(
-    power, voltage, efficiency, factor
-):
+def test_plate_implies_the_efficiency_and_power_factor_it_was_computed_from(power, voltage, efficiency, factor):
     current = full_load_from_power_a(power, voltage, efficiency, factor)
     implied = efficiency_times_power_factor(power, voltage, current)
     assert implied.item() == pytest.approx(efficiency / 100 * factor)

@@ -32,9 +32,7 @@ def phasor(magnitude: float, angle: float) -> complex:
 
 
 @given(faults, x_to_r, currents, factors, cables, cables)
-def test_bus_and_terminals_are_the_node_voltages_of_the_ladder(
-    fault_ka, ratio, locked, factor, resistance, reactance
-):
+def test_bus_and_terminals_are_the_node_voltages_of_the_ladder(fault_ka, ratio, locked, factor, resistance, reactance):
     source = phasor(400 / np.sqrt(3) / (1000 * fault_ka), np.arctan(ratio))
     cable = resistance + 1j * reactance
     motor = phasor(380 / np.sqrt(3) / locked, np.arccos(factor))
@@ -46,19 +44,13 @@ def test_bus_and_terminals_are_the_node_voltages_of_the_ladder(
 
 
 @given(faults, x_to_r, currents, factors, cables, cables)
-def test_both_forms_agree_for_the_current_that_really_flows(
-    fault_ka, ratio, locked, factor, resistance, reactance
-):
+def test_both_forms_agree_for_the_current_that_really_flows(fault_ka, ratio, locked, factor, resistance, reactance):
     source = phasor(400 / np.sqrt(3) / (1000 * fault_ka), np.arctan(ratio))
     motor = phasor(400 / np.sqrt(3) / locked, np.arccos(factor))
     total = source + resistance + 1j * reactance + motor
     current, power_factor = 400 / np.sqrt(3) / abs(total), np.cos(np.angle(total))
-    terminals = terminal_voltage_while_starting_v(
-        400, fault_ka, ratio, locked, 400, factor, resistance, reactance
-    )
-    by_current = voltage_at_start_current_v(
-        400, fault_ka, ratio, current, power_factor, resistance, reactance
-    )
+    terminals = terminal_voltage_while_starting_v(400, fault_ka, ratio, locked, 400, factor, resistance, reactance)
+    by_current = voltage_at_start_current_v(400, fault_ka, ratio, current, power_factor, resistance, reactance)
     assert by_current.item() == pytest.approx(terminals.item(), rel=1e-6)
 
 

@@ -48,9 +48,7 @@ def test_phase_to_phase_fault_follows_from_the_two_sequence_networks(fault_ka, r
     per_sequence = phasor(400 / np.sqrt(3) / (fault_ka * 1000), ratio)
     per_sequence += (0.193 * (1 + 0.00393 * 70) + 0.08j) * length_m / 1000
     expected = np.sqrt(3) * abs(400 / np.sqrt(3) / (2 * per_sequence))
-    least = least_phase_to_phase_fault_a(
-        fault_ka, ratio, 400, length_m=length_m, conductor_temperature_c=90, **CABLE
-    )
+    least = least_phase_to_phase_fault_a(fault_ka, ratio, 400, length_m=length_m, conductor_temperature_c=90, **CABLE)
     assert least.item() == pytest.approx(expected, rel=1e-9)
 
 
@@ -63,9 +61,7 @@ def test_earth_fault_follows_from_the_three_sequence_networks(fault_ka, ratio, l
     protective = (0.387 * hot + 0.08j) * length_m / 1000
     sequences = 2 * (source + phase) + (source + phase + 3 * protective)
     expected = abs(3 * 400 / np.sqrt(3) / sequences)
-    least = least_earth_fault_a(
-        fault_ka, ratio, 400, length_m, 95, 50, "copper", 1, 0.08, conductor_temperature_c=70
-    )
+    least = least_earth_fault_a(fault_ka, ratio, 400, length_m, 95, 50, "copper", 1, 0.08, conductor_temperature_c=70)
     assert least.item() == pytest.approx(expected, rel=1e-9)
 
 
@@ -90,9 +86,7 @@ def test_longer_hotter_or_single_cables_give_less(fault_ka, ratio, length_m, tim
 
 @given(faults, x_to_r, lengths)
 def test_least_fault_lies_below_the_greatest(fault_ka, ratio, length_m):
-    least = least_phase_to_phase_fault_a(
-        fault_ka, ratio, 400, length_m=length_m, conductor_temperature_c=90, **CABLE
-    )
+    least = least_phase_to_phase_fault_a(fault_ka, ratio, 400, length_m=length_m, conductor_temperature_c=90, **CABLE)
     assert least < greatest_three_phase_fault_a(fault_ka, ratio, 400, length_m=length_m, **CABLE)
 
 
@@ -107,9 +101,7 @@ def test_two_runs_have_half_the_impedance():
     assert two == pytest.approx(one / 2, rel=1e-12)
 
 
-@pytest.mark.parametrize(
-    ("material", "table"), [("copper", COPPER_OHM_PER_KM), ("aluminium", ALUMINIUM_OHM_PER_KM)]
-)
+@pytest.mark.parametrize(("material", "table"), [("copper", COPPER_OHM_PER_KM), ("aluminium", ALUMINIUM_OHM_PER_KM)])
 def test_tabled_resistance_is_never_far_from_the_conductivity_of_the_short_circuit_standard(material, table):
     # two standards, IEC 60228 and IEC 60909-0 (54 and 34 m per ohm mm2); nominal 50 mm2 is really about 47
     sections = np.array(list(table))

@@ -10,7 +10,6 @@ from openpyxl import load_workbook
 
 from tests.sites.write_sample import SAMPLE_FLEET, write_all
 
-
 WORKED_OUT_BY_HAND = {Path("after_modification") / "expected_comparison.csv"}
 
 
@@ -39,7 +38,9 @@ def test_committed_files_hold_what_the_generator_writes(written: Path):
 def test_no_workbook_is_left_over_from_an_earlier_generator(written: Path):
     kinds = ("*.xlsx", "*.csv")
     committed = {path.relative_to(SAMPLE_FLEET) for kind in kinds for path in SAMPLE_FLEET.rglob(kind)}
-    assert committed - WORKED_OUT_BY_HAND == {path.relative_to(written) for kind in kinds for path in written.rglob(kind)}
+    assert committed - WORKED_OUT_BY_HAND == {
+        path.relative_to(written) for kind in kinds for path in written.rglob(kind)
+    }
 
 
 def test_planted_defects_cover_many_checks():
