@@ -14,6 +14,7 @@ from typing import IO, Any
 from audit.findings.audit import Audit
 from audit.report.atomic import whole_file
 from audit.report.record import parts
+from audit.report.record.calculations import CALCULATIONS_FILE, write_calculations
 from audit.report.record.values import VALUES_FILE, write_values
 
 CSV_COLUMNS = (
@@ -25,7 +26,7 @@ DANGEROUS_FIRST = ("=", "+", "-", "@", "\t", "\r")
 
 
 def write_record(audit: Audit, folder: Path) -> list[Path]:
-    """Write findings.json, findings.csv, readings.csv.gz and values.jsonl.gz into a folder."""
+    """Write the findings, the readings, the values and the calculations into a folder."""
     folder.mkdir(parents=True, exist_ok=True)
     record = folder / "findings.json"
     with whole_file(record) as stream:
@@ -39,7 +40,10 @@ def write_record(audit: Audit, folder: Path) -> list[Path]:
     values = folder / VALUES_FILE
     with whole_file(values, _gzip) as stream:
         write_values(audit, stream)
-    return [record, table, readings, values]
+    calculations = folder / CALCULATIONS_FILE
+    with whole_file(calculations, _gzip) as stream:
+        write_calculations(audit, stream)
+    return [record, table, readings, values, calculations]
 
 
 @contextmanager
