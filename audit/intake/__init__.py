@@ -6,7 +6,7 @@ from collections.abc import Callable
 from pathlib import Path
 
 from audit.fleet.fleet import Fleet
-from audit.intake.gather import gather
+from audit.intake.gathering import gather
 from audit.intake.gathered import CannotRead, Gathered
 from audit.intake.resolve import resolve
 

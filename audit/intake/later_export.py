@@ -13,7 +13,7 @@ from pathlib import Path
 
 from lxml import etree
 
-from audit.intake.gather import gather
+from audit.intake.gathering import gather
 from audit.intake.gathered import Gathered
 from audit.intake.opening import find_workbooks
 from audit.intake.resolve.names import exact
