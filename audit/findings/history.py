@@ -50,17 +50,17 @@ class _Past:
         self.before = before
         self.earlier = str(recorded["audited_on"])
         self.today = audit.audited_on.isoformat()
+        self._places: dict[tuple[str, bool], dict[str, int]] = {}
         self.again = 0 if self.earlier == self.today else 1
         """A second run of one audit's day counts no further audit."""
-        self.found = {_recorded_identity(finding): finding for finding in recorded["findings"]}
         self.known = {one.identity(): one for one in map(_recorded_cleared, recorded.get("cleared", []))}
         self.site = str(recorded["fleet"])
         if before is not None:
             self.pair = Pair(before, audit)
             self.changes = Changes(self.pair)
             self.chains = Chains(self.pair, self.changes)
+        self.found = {self._identity(finding): finding for finding in recorded["findings"]}
         self.outcomes = outcomes_by_key(audit)
-        self._places: dict[str, dict[str, int]] = {}
 
     def told(self) -> Previous:
         """Tell everything."""
@@ -103,7 +103,7 @@ class _Past:
 
     def _how(self, finding: Mapping[str, Any]) -> tuple[str, int]:
         subject = finding["subject"]
-        row = self._row(subject, finding["name"])
+        row = self._row(subject, self._identity(finding)[1])
         if row < 0:
             return f"{subject} removed", row
         outcome = self.outcomes.get((finding["check"], 0))
@@ -143,13 +143,21 @@ class _Past:
         how = "meets now" if row >= 0 and outcome is not None else "no longer applies"
         return replace(one, how=how, cleared_on=self.today)
 
-    def _row(self, subject: str, name: str) -> int:
-        """Give the row that a name has now, or -1."""
-        if subject not in self._places:
-            table = self.audit.fleet.tables.get(subject)
+    def _row(self, subject: str, name: str, *, before: bool = False) -> int:
+        """Give the row that a name has now, or had before, or -1."""
+        audit = self.before if before else self.audit
+        if (subject, before) not in self._places:
+            table = audit.fleet.tables.get(subject) if audit is not None else None
             keys = table.keys if table is not None else ()
-            self._places[subject] = {exact(key): row for row, key in reversed(list(enumerate(keys)))}
-        return self._places[subject].get(exact(name), -1)
+            self._places[subject, before] = {exact(key): row for row, key in reversed(list(enumerate(keys)))}
+        return self._places[subject, before].get(exact(name), -1)
+
+    def _identity(self, finding: Mapping[str, Any]) -> Identity:
+        """Give the identity of a recorded finding, by the name that its row has now."""
+        subject, name = finding["subject"], finding["name"]
+        old = self._row(subject, name, before=True)
+        now = self.pair.name_after(subject, old) if old >= 0 else name
+        return identity_of(subject, now, finding["check"], finding["judges"], finding["setting_group"])
 
     def _settings(self) -> tuple[SettingDrift, ...]:
         if self.before is None:
@@ -204,12 +212,6 @@ class _Past:
 
 def _audits(finding: Mapping[str, Any]) -> int:
     return int(finding.get("audits") or 1)
-
-
-def _recorded_identity(finding: Mapping[str, Any]) -> Identity:
-    return identity_of(
-        finding["subject"], finding["name"], finding["check"], finding["judges"], finding["setting_group"]
-    )
 
 
 def _recorded_cleared(entry: Mapping[str, Any]) -> Cleared:

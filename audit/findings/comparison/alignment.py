@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field
 
 import numpy as np
 from numpy.typing import NDArray
 
 from audit.findings.audit import Audit
+from audit.findings.comparison.namesakes import namesakes, paired
 from audit.fleet.column import NO_ROW, Column, Integers
 from audit.fleet.folding import exact
 
@@ -62,7 +63,7 @@ class Pair:
     after: Audit
     _rows: dict[str, Integers] = field(default_factory=dict)
     _differ: dict[str, Mask] = field(default_factory=dict)
-    _places: dict[str, dict[str, int]] = field(default_factory=dict)
+    _after: dict[str, Integers] = field(default_factory=dict)
 
     def keys(self, subject: str, *, before: bool = False) -> tuple[str, ...]:
         """Give the keys of the rows of a subject."""
@@ -72,8 +73,22 @@ class Pair:
     def row_before(self, subject: str) -> Integers:
         """Give for each row after the same row before, NO_ROW for one that was added."""
         if subject not in self._rows:
-            self._rows[subject] = rows_by_key(self.keys(subject), self.keys(subject, before=True))
+            keys = self.keys(subject), self.keys(subject, before=True)
+            rows = rows_by_key(*keys)
+            for new, old in paired(namesakes(keys[1]), namesakes(keys[0]), self._cost(subject)).items():
+                rows[new] = old
+            self._rows[subject] = rows
         return self._rows[subject]
+
+    def _cost(self, subject: str) -> Callable[[int, int], int]:
+        tables = self.before.fleet.tables[subject].columns, self.after.fleet.tables[subject].columns
+        shared = [(tables[0][name], column) for name, column in tables[1].items() if name in tables[0]]
+
+        def cost(old: int, new: int) -> int:
+            rows = np.array([old], dtype=np.int64), np.array([new], dtype=np.int64)
+            return sum(bool(differ(b.gathered(rows[0]), a.gathered(rows[1]))[0]) for b, a in shared)
+
+        return cost
 
     def added(self, subject: str) -> list[int]:
         """Give the rows after that were not there before."""
@@ -117,9 +132,15 @@ class Pair:
         """Give the row after that a row before has become, or NO_ROW."""
         if row_before < 0:
             return NO_ROW
-        if subject not in self._places:
-            places: dict[str, int] = {}
-            for row, key in enumerate(self.keys(subject)):
-                places.setdefault(exact(key), row)
-            self._places[subject] = places
-        return self._places[subject].get(exact(self.keys(subject, before=True)[row_before]), NO_ROW)
+        if subject not in self._after:
+            rows = self.row_before(subject)
+            kept = np.flatnonzero(rows >= 0)
+            became = np.full(len(self.keys(subject, before=True)), NO_ROW, dtype=np.int64)
+            became[rows[kept]] = kept
+            self._after[subject] = became
+        return int(self._after[subject][row_before])
+
+    def name_after(self, subject: str, row_before: int) -> str:
+        """Give the name that a row before has now; its own where it is gone."""
+        row = self.as_after(subject, row_before)
+        return self.keys(subject)[row] if row >= 0 else self.keys(subject, before=True)[row_before]

@@ -11,9 +11,10 @@ from audit.findings.audit import Audit
 from audit.findings.comparison.alignment import Pair
 from audit.findings.comparison.changes import Changes
 from audit.findings.comparison.moves import outcomes_by_key
+from audit.findings.figures import margin_pct
 from audit.findings.finding import FindingCode
 from audit.findings.past import Identity, identity_of
-from audit.findings.render import FindingRenderer, margin_pct
+from audit.findings.render import FindingRenderer
 
 Standing = Literal["new", "gone", "still there", "worse", "better", "no longer provable"]
 STANDINGS: tuple[Standing, ...] = ("new", "worse", "no longer provable", "still there", "better", "gone")
@@ -43,10 +44,10 @@ class FindingChange:
     why_gone: str = ""
 
 
-def identity(audit: Audit, code: FindingCode) -> Identity:
-    """Give what makes a finding the same finding in another audit."""
+def identity(audit: Audit, code: FindingCode, name: str = "") -> Identity:
+    """Give what makes a finding the same finding in another audit, where its row may have another name."""
     check = audit.outcomes[code.outcome].check
-    name = audit.fleet.tables[check.subject].keys[code.row]
+    name = name or audit.fleet.tables[check.subject].keys[code.row]
     return identity_of(check.subject, name, check.key, setting_of(audit, code), code.group)
 
 
@@ -78,12 +79,15 @@ class Standings:
 
     def all(self) -> tuple[FindingChange, ...]:
         """Give every finding of either side, by standing and severity."""
-        before = {identity(self.pair.before, code): code for code in self.pair.before.codes}
+        before = {identity(self.pair.before, code, self._name_now(code)): code for code in self.pair.before.codes}
         after = {identity(self.pair.after, code): code for code in self.pair.after.codes}
         found = [self._one(before.get(key), code) for key, code in after.items()]
         found += [self._one(code, None) for key, code in before.items() if key not in after]
         rank = {severity: place for place, severity in enumerate(SEVERITIES)}
         return tuple(sorted(found, key=lambda one: (STANDINGS.index(one.standing), rank[one.severity])))
+
+    def _name_now(self, code: FindingCode) -> str:
+        return self.pair.name_after(self.pair.before.outcomes[code.outcome].check.subject, code.row)
 
     def _one(self, before: FindingCode | None, after: FindingCode | None) -> FindingChange:
         old = _margin(self.pair.before, before) if before is not None else None
