@@ -20,6 +20,7 @@ MARK = "work:"
 STAMP = "stamp:"
 FIRST_ROWS = 60
 MOST_ROWS, MOST_COLUMNS = 200_000, 400
+LARGE_BYTES = 3_000_000
 _ZIPPED = (".xlsx", ".xlsm")
 
 
@@ -136,17 +137,26 @@ def _marked_rows(sheet: _Sheet, stamps: list[str]) -> Iterator[tuple[dict[str, i
 
 
 def _styled(path: Path) -> Iterator[_Sheet]:
-    """Read sheets with what is struck through, which grids of values do not tell of a part of a cell."""
+    """Read sheets with what is struck through, which grids of values do not tell of a part of a cell.
+
+    Large files are streamed; a part struck through is then told only where the text stands in the shared strings,
+    as the usual programs write it.
+    """
+    streamed = path.stat().st_size > LARGE_BYTES
     try:
-        book = load_workbook(path, read_only=True, data_only=True, rich_text=True)
+        book = load_workbook(path, read_only=streamed, data_only=True, rich_text=True)
     except (ValueError, KeyError, TypeError, zipfile.BadZipFile) as error:
         raise Refusal(f"{path.name}: the workbook cannot be read ({error}). Save it anew as .xlsx.") from error
     try:
         for sheet in book.worksheets:
-            sheet.reset_dimensions()
+            if streamed:
+                sheet.reset_dimensions()
+            # a loaded sheet would grow to the bounds asked for; a streamed one does not know its size
+            rows = MOST_ROWS if streamed else min(sheet.max_row, MOST_ROWS)
+            columns = MOST_COLUMNS if streamed else min(sheet.max_column, MOST_COLUMNS)
             yield _Sheet(
                 sheet.title,
-                ([_cell(cell) for cell in row] for row in sheet.iter_rows(max_row=MOST_ROWS, max_col=MOST_COLUMNS)),
+                ([_cell(cell) for cell in row] for row in sheet.iter_rows(max_row=rows, max_col=columns)),
             )
     finally:
         book.close()

@@ -155,6 +155,8 @@ class Sorter:
         if shown is None or self._export is None:
             return State.REPORTED, "as issued and inside the range; typed only"
         exported_on = self._export.days[one.work.relay_key]
+        if exported_on > self._after.audited_on:
+            return State.REPORTED, f"as issued; the export bears a day that is yet to come ({exported_on})"
         if one.done_on is None:
             return State.REPORTED, "as issued, and so in the export, but the day of the work is not known"
         if exported_on < one.done_on:
@@ -212,6 +214,7 @@ class Sorter:
 
 
 def _agree(typed: Answer, shown: Answer, one: Matched) -> bool:
+    """Tell whether the export shows what was typed, to half a step."""
     if one.work.kind == "number" and not (typed.off or shown.off):
-        return same_value(typed.number, shown.number, one.work.written)
+        return same_value(typed.number, shown.number, one.work.written, 0.5)
     return same_answer(typed, shown, one.work)
