@@ -8,7 +8,6 @@ from pathlib import Path
 from typing import Any
 
 from audit.checks.entry import Check, Requirement, read_entry
-from audit.checks.wording import limit_in_words
 from audit.derivation.functions import FUNCTIONS
 from audit.derivation.hand_over_facts import HAND_OVER_FACTS
 from audit.derivation.recipes import Recipe, check_recipes, lookup_for, read_recipes
@@ -17,7 +16,7 @@ from audit.expression.functions import Functions
 from audit.expression.nodes import Name, Node, names_in
 from audit.expression.parse import BadExpression
 from audit.expression.units import Meaning, UnitCheck, nearest
-from audit.limits.limits import BadRule, Limit, override_limits, read_limits, read_rule_file
+from audit.limits.limits import BadRule, Limit, limit_in_words, override_limits, read_limits, read_rule_file
 from audit.rule_folder import rules_folder
 from audit.vocabulary.quantities import Quantity, vocabulary
 from audit.vocabulary.units import DIMENSIONLESS, UNITS
@@ -64,7 +63,7 @@ class Catalogue:
 
     def reads(self, function: str) -> str:
         """Give how a function reads."""
-        return self.functions[function].reads or function.replace("_", " ")
+        return self.functions[function].in_words()
 
     def names_beneath(self, check: Check) -> set[str]:
         """Give every quantity and limit that a check rests on, through all recipes."""

@@ -60,6 +60,10 @@ class SettingRange:
         """Tell where at least one end is set."""
         return ~np.isnan(self.low) | ~np.isnan(self.high)
 
+    def states(self) -> tuple[tuple[str, Mask], ...]:
+        """Give the words that qualify a range, each with the rows that it holds for."""
+        return ("provisional", self.provisional), ("moving", self.moving), ("conflict", self.conflict())
+
 
 def settings_beneath(node: Node, workings: Workings, seen: set[str]) -> set[str]:
     """Give the settings that an expression rests on, through all recipes; `seen` gathers the names met."""

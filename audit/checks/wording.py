@@ -1,27 +1,20 @@
-"""Requirements and limits in words, for the catalogue, the generated pages and the calculation sheet."""
+"""Requirements in words, for the catalogue, the generated pages and the calculation sheet."""
 
 from __future__ import annotations
 
 from collections.abc import Callable
 
 from audit.checks.entry import Requirement
-from audit.expression.text import plain_number, render
-from audit.limits.limits import Limit
+from audit.expression.text import render
 
 Words = Callable[[str], str]
-_BOUNDS = {
+BOUND_WORDS = {
     "at_least": "at least",
     "above": "above",
     "at_most": "at most",
     "below": "below",
     "equals": "equal to",
 }
-
-
-def limit_in_words(limit: Limit) -> str:
-    """Write a limit's value with its unit."""
-    text = plain_number(limit.value)
-    return f"{text} {limit.unit.symbol}" if limit.unit.symbol else text
 
 
 def requirement_in_words(requirement: Requirement, label: Words, reads: Words) -> str:
@@ -38,7 +31,7 @@ def requirement_in_words(requirement: Requirement, label: Words, reads: Words) -
             text = f"{judged}: stated"
         else:
             assert requirement.bound is not None
-            text = f"{judged} {_BOUNDS[requirement.kind]} {render(requirement.bound, label, reads)}"
+            text = f"{judged} {BOUND_WORDS[requirement.kind]} {render(requirement.bound, label, reads)}"
     if requirement.within is not None:
         text += f", within {render(requirement.within, label, reads)}"
     if requirement.when is not None:

@@ -11,7 +11,7 @@ from audit.derivation.workings import CHILD_OF, Workings
 from audit.expression.nodes import Name, Node, names_over_rows, walk
 from audit.expression.text import plain_number, render
 from audit.fleet.column import ASSUMED, BASIS_NAMES, NO_CELL, Column
-from audit.limits.limits import Limit
+from audit.limits.limits import limit_in_words
 from audit.vocabulary.quantities import Quantity
 
 
@@ -89,7 +89,7 @@ class Trace:
         """Give a name's value in a row, in words."""
         limit = self.workings.limits.get(name)
         if limit is not None:
-            return limit_text(limit)
+            return limit_in_words(limit)
         if name == AUDIT_DATE:
             return self.workings.audited_on.isoformat()
         quantity = self.workings.quantities.get(name)
@@ -99,7 +99,6 @@ class Trace:
 
     def numbers_in(self, node: Node, subject: str, row: int) -> str:
         """Write an expression with the numbers of a row put in."""
-        functions = self.workings.functions
         of_child_rows = names_over_rows(node, self.of_rows)
 
         def name_of(name: str) -> str:
@@ -107,7 +106,7 @@ class Trace:
                 return self.workings.quantities[name].label
             return self.text_of(subject, row, name)
 
-        return render(node, name_of, lambda function: functions[function].reads or function.replace("_", " "))
+        return render(node, name_of, self.reads)
 
     def steps(self, node: Node, subject: str, row: int, seen: set[tuple[str, int]] | None = None) -> Iterator[Step]:
         """Give every quantity beneath an expression in one row, deepest first, each once."""
@@ -149,7 +148,7 @@ class Trace:
             shown,
             basis,
             NO_CELL,
-            formula=render(way.node, lambda used: self.label_of(used), self._reads),
+            formula=render(way.node, self.label_of, self.reads),
             with_numbers=self.numbers_in(way.node, quantity.subject, at),
             source=recipe.source,
             note=recipe.note if way.basis == ASSUMED else "",
@@ -159,17 +158,12 @@ class Trace:
         """Tell whether a function looks at child rows."""
         return self.workings.functions[function].of_rows
 
-    def _reads(self, function: str) -> str:
-        return self.workings.functions[function].reads or function.replace("_", " ")
+    def reads(self, function: str) -> str:
+        """Give the name of a function in words."""
+        return self.workings.functions[function].in_words()
 
     def label_of(self, name: str) -> str:
         """Give the label of a quantity or limit."""
         if name in self.workings.quantities:
             return self.workings.quantities[name].label
         return "day of the audit" if name == AUDIT_DATE else name.replace("_", " ")
-
-
-def limit_text(limit: Limit) -> str:
-    """Write a limit with its unit."""
-    text = plain_number(limit.value)
-    return f"{text} {limit.unit.symbol}" if limit.unit.symbol else text

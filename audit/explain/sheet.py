@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from audit.cautions import CAUTIONS
 from audit.checks.ranges import NO_CHECK
 from audit.checks.verdicts import UNPROVEN, VERDICT_NAMES, Judged, Outcome, data_lacking
-from audit.checks.wording import limit_in_words, requirement_in_words
+from audit.checks.wording import requirement_in_words
 from audit.derivation.trace import Step, Trace, shown_number
 from audit.expression.nodes import Node, names_in
 from audit.expression.text import render
@@ -15,8 +15,9 @@ from audit.expression.units import nearest
 from audit.expression.values import NO, UNKNOWN, YES
 from audit.findings.audit import Audit
 from audit.findings.collect import label_of
-from audit.findings.render import margin_pct, range_text
+from audit.findings.figures import margin_pct, range_text
 from audit.fleet.column import NO_CELL, NO_ROW
+from audit.limits.limits import limit_in_words
 from audit.refusal import Refusal
 from audit.vocabulary.units import DIMENSIONLESS
 
@@ -78,7 +79,7 @@ class CalculationSheet:
         name = self.audit.fleet.tables[check.subject].keys[row]
         of = "" if check.subject == "motor" else f" · {check.subject} {name}"
         yield f"{check.function} · {check.key}{of} · {verdict}{provisional} ({check.severity})"
-        condition = render(check.when, self._label, self._reads)
+        condition = render(check.when, self._label, self.trace.reads)
         applies = {NO: "no", UNKNOWN: "not known", YES: "yes"}[int(outcome.applies[row])]
         yield f"  applies when: {condition}: {applies}"
         for judged in outcome.judged:
@@ -106,7 +107,7 @@ class CalculationSheet:
 
     def _requirement_lines(self, outcome: Outcome, judged: Judged, row: int) -> Iterator[str]:
         requirement = judged.requirement
-        wanted = requirement_in_words(requirement, self._label, self._reads)
+        wanted = requirement_in_words(requirement, self._label, self.trace.reads)
         active = int(judged.active[row])
         if active != YES:
             yield f"  wanted: {wanted}: {_ACTIVE_WORDS[active]}"
@@ -165,6 +166,3 @@ class CalculationSheet:
     def _label(self, name: str) -> str:
         limit = self.audit.workings.limits.get(name)
         return limit_in_words(limit) if limit is not None else self.trace.label_of(name)
-
-    def _reads(self, function: str) -> str:
-        return self.audit.workings.functions[function].reads or function.replace("_", " ")

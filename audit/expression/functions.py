@@ -40,6 +40,10 @@ class Function:
     reads: str = ""
     """How the function reads in a calculation sheet."""
 
+    def in_words(self) -> str:
+        """Give the function's name as a calculation sheet shows it."""
+        return self.reads or self.name.replace("_", " ")
+
 
 def function_from_signature(
     call: Callable[..., Any], *, choices: tuple[str, ...] = (), reads: str = "", returns: Unit | None = None

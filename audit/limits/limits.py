@@ -9,6 +9,7 @@ from dataclasses import dataclass, replace
 from pathlib import Path
 from typing import Any
 
+from audit.expression.text import plain_number
 from audit.expression.units import nearest
 from audit.refusal import Refusal
 from audit.vocabulary.units import UNITS, Unit, unit_named, unit_of_ending
@@ -37,6 +38,12 @@ class Limit:
 
 
 _KEYS = {"value", "unit", "says", "source"}
+
+
+def limit_in_words(limit: Limit) -> str:
+    """Write a limit's value with its unit."""
+    text = plain_number(limit.value)
+    return f"{text} {limit.unit.symbol}" if limit.unit.symbol else text
 
 
 def read_rule_file(path: Path) -> dict[str, Any]:

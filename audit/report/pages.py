@@ -7,8 +7,9 @@ from itertools import groupby
 
 from audit.checks.catalogue import Catalogue, load_catalogue
 from audit.checks.entry import Check
-from audit.checks.wording import limit_in_words, requirement_in_words
+from audit.checks.wording import requirement_in_words
 from audit.expression.text import render
+from audit.limits.limits import limit_in_words
 from audit.rule_folder import rules_folder
 from audit.vocabulary.quantities import Quantity, vocabulary
 

@@ -12,6 +12,7 @@ from audit.checks.ranges import settings_beneath
 from audit.checks.verdicts import UNPROVEN, Outcome, data_lacking
 from audit.findings.audit import Audit
 from audit.findings.collect import label_of
+from audit.findings.figures import known_or_none
 from audit.findings.finding import Finding, FindingCode
 from audit.findings.handover.moving import Movements, MovingEnds
 from audit.findings.handover.propose import Proposal, propose_number, propose_switch
@@ -190,7 +191,7 @@ class _Maker:
             band = self.audit.ranges.get(quantity.name)
             if band is None or motor_row == NO_ROW:
                 return None, None, MovingEnds()
-            low, high = _known(float(band.low[motor_row])), _known(float(band.high[motor_row]))
+            low, high = known_or_none(float(band.low[motor_row])), known_or_none(float(band.high[motor_row]))
             moves = bool(band.moving[motor_row])
         if not moves or motor_row == NO_ROW:
             return low, high, MovingEnds()
@@ -281,7 +282,3 @@ def _judges(outcome: Outcome, setting: str) -> bool:
 def _function(quantity: Quantity, finding: Finding) -> str:
     element = vocabulary().elements.get(quantity.element or "")
     return f"{element.function} {element.label}" if element else finding.function
-
-
-def _known(value: float) -> float | None:
-    return None if np.isnan(value) else value

@@ -167,17 +167,8 @@ def ranges(audit: Audit) -> Iterator[dict[str, Any]]:
     for band in audit.ranges.values():
         quantity = audit.workings.quantities[band.setting]
         present = audit.workings.column("motor", band.setting).values
-        conflict = band.conflict()
+        states = band.states()
         for row in np.flatnonzero(band.bounded()).tolist():
-            state = [
-                word
-                for word, flag in (
-                    ("provisional", band.provisional),
-                    ("moving", band.moving),
-                    ("conflict", conflict),
-                )
-                if flag[row]
-            ]
             yield {
                 "motor": keys[row],
                 "setting": band.setting,
@@ -189,7 +180,7 @@ def ranges(audit: Audit) -> Iterator[dict[str, Any]]:
                 "high_set_by": _check_key(audit, int(band.high_check[row])),
                 "preferred_low": number_or_none(float(band.preferred_low[row])),
                 "preferred_high": number_or_none(float(band.preferred_high[row])),
-                "state": ", ".join(state),
+                "state": ", ".join(word for word, holds in states if holds[row]),
             }
 
 
