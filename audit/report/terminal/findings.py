@@ -18,7 +18,7 @@ from audit.report.terminal.since import standing_word
 from audit.report.terminal.style import MEANING, STYLE, WIDE, counted, severity_word
 
 MOST_LINES = 10
-MOST_NAMES = 4
+MOST_NAMES = 12
 
 
 def print_findings(audit: Audit, console: Console, *, everything: bool = False) -> None:
