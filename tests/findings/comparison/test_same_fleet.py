@@ -74,9 +74,7 @@ def test_the_whole_sample_in_another_order_is_no_news(catalogue: Catalogue, tmp_
     for rows in (site.motors, site.relays, site.starts, site.buses):
         choose.shuffle(rows)
     write_whole_site(site, tmp_path / "other")
-    one, other = (
-        audit_fleet(read_fleet(tmp_path / name), catalogue, audited_on=DAY) for name in ("one", "other")
-    )
+    one, other = (audit_fleet(read_fleet(tmp_path / name), catalogue, audited_on=DAY) for name in ("one", "other"))
     comparison = compare(one, other)
     assert comparison.standing_counts()["still there"] > 100
     assert comparison.is_empty()
