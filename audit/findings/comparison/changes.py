@@ -214,7 +214,7 @@ def _plain(value: object, text: str, kind: str) -> object:
     if kind == "number" and isinstance(value, (int, float)):
         return float(value) if np.isfinite(value) else text
     if kind == "truth":
-        return value == 2
+        return bool(value == 2)
     return text
 
 
