@@ -145,10 +145,15 @@ def _read_values(file: Path, content: Mapping[str, Any], readings: Path) -> tupl
 
 def _readings(file: Path) -> pd.DataFrame:
     """Read the readings; words like 'NA' stay words."""
-    header = pd.read_csv(file, nrows=0).columns
-    kinds = {name: _NUMBER_COLUMNS.get(name, "object") for name in header}
-    numbers = [name for name in header if name in _NUMBER_COLUMNS]
-    return pd.read_csv(file, dtype=kinds, keep_default_na=False, na_values={name: [""] for name in numbers})
+    try:
+        header = pd.read_csv(file, nrows=0).columns
+        kinds = {name: _NUMBER_COLUMNS.get(name, "object") for name in header}
+        blanks = {name: [""] for name in header if name in _NUMBER_COLUMNS}
+        return pd.read_csv(file, dtype=kinds, keep_default_na=False, na_values=blanks)
+    except pd.errors.EmptyDataError:
+        return pd.DataFrame()
+    except (OSError, EOFError, ValueError) as error:
+        raise Refusal(f"{file}: the readings cannot be read: {error}. Audit that fleet again.") from error
 
 
 def _column(line: Mapping[str, Any], size: int) -> Column:
