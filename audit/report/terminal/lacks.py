@@ -10,6 +10,7 @@ from rich.text import Text
 from audit.checks.entry import SEVERITIES
 from audit.findings.audit import Audit
 from audit.report.terminal.style import LETTER, counted
+from audit.report.terminal.tables import print_heading, print_left_out
 
 MOST_DATA = 12
 MOST_COMPLAINTS = 10
@@ -19,10 +20,7 @@ def print_data_to_collect(audit: Audit, console: Console) -> None:
     """Print which data would settle most verdicts."""
     if not audit.data_to_collect:
         return
-    console.print()
-    console.rule(
-        Text("Data to collect · what would settle most, unsafe checks first", "bold"), align="left", style="default"
-    )
+    print_heading(console, "Data to collect · what would settle most, unsafe checks first")
     table = Table(box=None, pad_edge=False, header_style="italic")
     table.add_column("datum", overflow="fold", ratio=2)
     table.add_column("of", justify="right", no_wrap=True)
@@ -49,18 +47,13 @@ def print_complaints(audit: Audit, console: Console) -> None:
     """Print what of the inputs could not be used, worst first, and what is asked."""
     complaints = sorted(audit.fleet.complaints, key=lambda item: ("stop", "withheld", "remark").index(item.weight))
     if complaints:
-        console.print()
-        console.rule(
-            Text(f"The inputs · {counted(len(complaints), 'complaint')}", "bold"), align="left", style="default"
-        )
+        print_heading(console, f"The inputs · {counted(len(complaints), 'complaint')}")
         for item in complaints[:MOST_COMPLAINTS]:
             console.print(Padding(Text(item.sentence()), (0, 0, 0, 2)))
-        if len(complaints) > MOST_COMPLAINTS:
-            console.print(f"  … and {len(complaints) - MOST_COMPLAINTS:,} more, all in the workbook's data sheet")
+        print_left_out(console, len(complaints), MOST_COMPLAINTS, "the workbook's data sheet")
     if audit.fleet.questions:
-        console.print()
-        title = f"Asked · {counted(len(audit.fleet.questions), 'question')}; the values concerned are withheld"
-        console.rule(Text(title, "bold"), align="left", style="default")
+        asked = counted(len(audit.fleet.questions), "question")
+        print_heading(console, f"Asked · {asked}; the values concerned are withheld")
         for question in audit.fleet.questions[:MOST_COMPLAINTS]:
             place = " › ".join(part for part in (question.file, question.sheet, question.cell) if part)
             console.print(Padding(Text(f"{place}: {question.about} {question.ask}".strip()), (0, 0, 0, 2)))

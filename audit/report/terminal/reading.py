@@ -5,11 +5,11 @@ from __future__ import annotations
 from itertools import groupby
 
 from rich.console import Console
-from rich.table import Table
 from rich.text import Text
 
 from audit.intake.gathered import Gathered
 from audit.report.terminal.style import counted
+from audit.report.terminal.tables import open_table, print_heading
 from audit.vocabulary.quantities import vocabulary
 
 
@@ -17,15 +17,12 @@ def print_reading(gathered: Gathered, console: Console) -> None:
     """Print every column of every sheet as it was read."""
     known = vocabulary().quantities
     for (file, sheet), columns in groupby(gathered.columns, key=lambda column: (column.file, column.sheet)):
-        console.print()
         as_read = next((s for s in gathered.sheets if s.file == file and s.sheet == sheet), None)
         kind = (
             f" · {as_read.table} list, layout {as_read.layout}, headers in row {as_read.header_row}" if as_read else ""
         )
-        console.rule(Text(f"{file} › {sheet}{kind}", "bold"), align="left", style="default")
-        table = Table(box=None, pad_edge=False, header_style="italic")
-        for heading in ("cell", "header", "read as", "unit or base", "for instance", "how"):
-            table.add_column(heading, overflow="fold")
+        print_heading(console, f"{file} › {sheet}{kind}")
+        table = open_table("cell", "header", "read as", "unit or base", "for instance", "how")
         for column in columns:
             labels = [known[name].label for name in column.quantity.split(", ") if name in known]
             read_as = f"{'; '.join(labels)} ({column.quantity})" if labels else column.quantity or "unread"

@@ -6,7 +6,6 @@ from collections import Counter
 
 from rich.console import Console
 from rich.padding import Padding
-from rich.table import Table
 from rich.text import Text
 
 from audit.findings.audit import Audit
@@ -14,8 +13,10 @@ from audit.findings.finding import Finding
 from audit.findings.past import Previous
 from audit.findings.trends import drifts
 from audit.report.terminal.style import counted
+from audit.report.terminal.tables import print_heading, print_left_out, print_table
 
 MOST_LINES = 12
+RECORD = "findings.json"
 
 
 def standing_word(finding: Finding) -> str:
@@ -30,10 +31,10 @@ def print_trends(audit: Audit, console: Console) -> None:
     found = drifts(audit.workings)
     if not found:
         return
-    _heading(console, f"Drifting toward a limit · {counted(len(found), 'trend')} of recorded starts")
+    print_heading(console, f"Drifting toward a limit · {counted(len(found), 'trend')} of recorded starts")
     for drift in found[:MOST_LINES]:
         console.print(Padding(Text(f"{drift.motor}: {drift.words()}"), (0, 0, 0, 2)))
-    _left(console, len(found))
+    print_left_out(console, len(found), MOST_LINES, RECORD)
 
 
 def print_since(audit: Audit, console: Console) -> None:
@@ -45,7 +46,7 @@ def print_since(audit: Audit, console: Console) -> None:
     counts = Counter(past.status for past in previous.pasts.values())
     cleared = [one for one in previous.cleared_now(today) if one.cleared_on]
     told = ", ".join(f"{counts[word]:,} {word}" for word in ("new", "repeated", "returned"))
-    _heading(console, f"Since the audit of {previous.audited_on} · {told}, {len(cleared):,} cleared")
+    print_heading(console, f"Since the audit of {previous.audited_on} · {told}, {len(cleared):,} cleared")
     for notice in previous.notices:
         console.print(Text(f"  note: {notice}"))
     _print_cleared(previous, today, console)
@@ -56,11 +57,9 @@ def _print_cleared(previous: Previous, today: str, console: Console) -> None:
     found = previous.cleared_now(today)
     if not found:
         return
-    table = _table("of", "finding cleared or no longer provable", "how", "what changed")
-    for one in found[:MOST_LINES]:
-        table.add_row(*map(Text, (one.name, one.check, one.how, "; ".join(one.what_changed))))
-    console.print(Padding(table, (0, 0, 0, 2)))
-    _left(console, len(found))
+    headings = ("of", "finding cleared or no longer provable", "how", "what changed")
+    rows = [(one.name, one.check, one.how, "; ".join(one.what_changed)) for one in found]
+    print_table(console, headings, rows, MOST_LINES, RECORD)
 
 
 def _print_settings(previous: Previous, console: Console) -> None:
@@ -68,26 +67,14 @@ def _print_settings(previous: Previous, console: Console) -> None:
     if not unexplained:
         return
     console.print(Text("  Settings that changed although no change is listed and no finding asked for it:", "bold"))
-    table = _table("relay", "setting", "before", "now", "cell")
-    for one in unexplained[:MOST_LINES]:
-        place = f"{one.file} › {one.sheet} › {one.cell}" if one.file else ""
-        table.add_row(*map(Text, (one.relay, one.label, one.before_text, one.after_text, place)))
-    console.print(Padding(table, (0, 0, 0, 2)))
-    _left(console, len(unexplained))
-
-
-def _heading(console: Console, text: str) -> None:
-    console.print()
-    console.rule(Text(text, "bold"), align="left", style="default")
-
-
-def _table(*headings: str) -> Table:
-    table = Table(box=None, pad_edge=False, header_style="italic")
-    for heading in headings:
-        table.add_column(heading, overflow="fold")
-    return table
-
-
-def _left(console: Console, number: int) -> None:
-    if number > MOST_LINES:
-        console.print(f"  … and {number - MOST_LINES:,} more, all in findings.json")
+    rows = [
+        (
+            one.relay,
+            one.label,
+            one.before_text,
+            one.after_text,
+            f"{one.file} › {one.sheet} › {one.cell}" if one.file else "",
+        )
+        for one in unexplained
+    ]
+    print_table(console, ("relay", "setting", "before", "now", "cell"), rows, MOST_LINES, RECORD)
