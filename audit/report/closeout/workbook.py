@@ -17,8 +17,7 @@ from audit.findings.handover.rows import place_order
 from audit.report.closeout.terminal import MARKS
 from audit.report.record.parts import tool_version
 from audit.report.workbook.sheets.cover import pairs, sign_off
-from audit.report.workbook.sheets.layout import FILLS, LETTERS, fill, page, put, table, title
-from audit.report.workbook.sheets.work import place_words
+from audit.report.workbook.sheets.layout import FILLS, LETTERS, fill, new_sheet, page, put, table, title
 
 CLOSE_OUT, ROWS, NEW, ALTERED = "Close-out", "Findings", "New findings", "Altered"
 HEADINGS = (
@@ -38,9 +37,7 @@ def write_closeout_workbook(result: CloseOut, folder: Path) -> Path:
     book.remove(book.worksheets[0])
 
     def sheet(name: str) -> Worksheet:
-        created = book.create_sheet(name)
-        assert isinstance(created, Worksheet)
-        return created
+        return new_sheet(book, name)
 
     _cover(result, sheet(CLOSE_OUT))
     _rows(result, sheet(ROWS))

@@ -16,7 +16,7 @@ from audit.findings.comparison.looked_at import LookedAt
 from audit.findings.comparison.standing import FindingChange
 from audit.fleet.addresses import Place
 from audit.report.comparison.cover import write_cover
-from audit.report.workbook.sheets.layout import FILLS, LETTERS, fill, page, table, title
+from audit.report.workbook.sheets.layout import FILLS, LETTERS, fill, new_sheet, page, table, title
 
 COVER, CHANGED, FINDINGS = "Change", "Changed", "Findings"
 TOUCHED, PROOFS, LOOKED_AT = "Touched", "No longer provable", "Looked at"
@@ -31,9 +31,7 @@ def write_workbook(comparison: Comparison, target: Path) -> None:
     site = comparison.after.fleet.site
 
     def sheet(name: str) -> Worksheet:
-        created = book.create_sheet(name)
-        assert isinstance(created, Worksheet)
-        return created
+        return new_sheet(book, name)
 
     write_cover(comparison, sheet(COVER))
     _changed(comparison, sheet(CHANGED))

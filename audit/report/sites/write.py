@@ -8,14 +8,13 @@ from pathlib import Path
 from typing import Any
 
 from openpyxl import Workbook
-from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.cautions import CAUTIONS
 from audit.checks.entry import SEVERITIES
 from audit.report.atomic import whole_file
 from audit.report.record.parts import tool_version
 from audit.report.sites.summary import SitesSummary
-from audit.report.workbook.sheets.layout import page, table, title
+from audit.report.workbook.sheets.layout import new_sheet, page, table, title
 
 SITES_VERSION = 1
 HEADING = "Several sites"
@@ -60,8 +59,7 @@ def _book(summary: SitesSummary) -> Workbook:
     sites = summary.sites()
 
     def sheet(name: str, below: str, headings: list[str], widths: list[float], rows: list[list[object]]) -> None:
-        created = book.create_sheet(name)
-        assert isinstance(created, Worksheet)
+        created = new_sheet(book, name)
         table(created, title(created, name, below), headings, widths, rows)
         page(created, HEADING)
 

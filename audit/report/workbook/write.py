@@ -23,8 +23,10 @@ from audit.report.workbook.patch import (
     names_for_report,
     save_with_values,
 )
+from audit.report.workbook.sheets.accepted import write_accepted
 from audit.report.workbook.sheets.cover import write_cover
 from audit.report.workbook.sheets.findings import write_findings
+from audit.report.workbook.sheets.layout import new_sheet
 from audit.report.workbook.sheets.lists import write_checks, write_data_to_collect, write_inputs
 from audit.report.workbook.sheets.motors import write_motors
 from audit.report.workbook.sheets.ranges import write_ranges
@@ -33,7 +35,8 @@ from audit.report.workbook.sheets.work import write_work
 
 COVER, FINDINGS, WORK, MOTORS, RANGES = "Audit", "Findings", "Work", "Motors", "Ranges"
 DATA, SINCE, INPUTS, CHECKS = "Data to collect", "Since last audit", "Inputs", "Checks applied"
-SHEETS = (COVER, FINDINGS, WORK, MOTORS, RANGES, DATA, SINCE, INPUTS, CHECKS)
+ACCEPTED = "Accepted deviations"
+SHEETS = (COVER, FINDINGS, WORK, ACCEPTED, MOTORS, RANGES, DATA, SINCE, INPUTS, CHECKS)
 PATCHABLE = (".xlsx", ".xlsm")
 
 
@@ -111,9 +114,7 @@ def build_sheets(
     book.remove(book.worksheets[0])
 
     def sheet(name: str) -> Worksheet:
-        created = book.create_sheet(names.get(name, name))
-        assert isinstance(created, Worksheet)
-        return created
+        return new_sheet(book, names.get(name, name))
 
     write_cover(audit, sheet(COVER))
     write_findings(findings, sheet(FINDINGS), audit.fleet.site, own_file)
@@ -121,6 +122,7 @@ def build_sheets(
     if whole:
         work = sheet(WORK)
         values[work.title] = write_work(audit, work_rows(audit, findings), work, own_file)
+        write_accepted(audit, findings, sheet(ACCEPTED))
         write_motors(audit, list(findings), sheet(MOTORS))
         write_ranges(audit, sheet(RANGES))
         write_data_to_collect(audit, sheet(DATA))

@@ -6,6 +6,7 @@ import re
 from collections.abc import Iterable, Sequence
 from typing import Any
 
+from openpyxl import Workbook
 from openpyxl.cell import Cell
 from openpyxl.styles import Alignment, Border, Font, NamedStyle, PatternFill, Side
 from openpyxl.utils import get_column_letter
@@ -30,6 +31,13 @@ _BORDERS = {"audit text": Border(), "audit row": _ROW_BORDER}
 _PLAIN, _BOLD = Font(name="Calibri", size=10), Font(name="Calibri", size=10, bold=True)
 _WRAPPED, _ONE_LINE = Alignment(vertical="top", wrap_text=True), Alignment(vertical="top")
 _UNPRINTABLE = re.compile(r"[\x00-\x08\x0b\x0c\x0e-\x1f]")
+
+
+def new_sheet(book: Workbook, name: str) -> Worksheet:
+    """Add an empty worksheet after those that a workbook has."""
+    created = book.create_sheet(name)
+    assert isinstance(created, Worksheet)
+    return created
 
 
 def put(sheet: Worksheet, row: int, column: int, value: Any, *, bold: bool = False, wrap: bool = True) -> Cell:
