@@ -14,7 +14,6 @@ from audit.vocabulary.units import UNITS
 
 RELATIVE_UNITS = ("", "x", "pct")
 """Ways to write a current or voltage that say nothing without a base."""
-DELAY_PARTS = ("trip_delay", "alarm_delay", "block")
 
 
 def _based() -> dict[str, Quantity]:

@@ -78,8 +78,3 @@ class Finding:
     """Day of the audit that found it first."""
     audits: int = 1
     """Number of audits that found it, this one with them."""
-
-    @property
-    def is_setting(self) -> bool:
-        """Tell whether a setting of a relay is judged."""
-        return bool(self.relay) and self.judges != ""

@@ -6,8 +6,8 @@ from collections.abc import Callable
 from pathlib import Path
 
 from audit.fleet.fleet import Fleet
-from audit.intake.gathering import gather
 from audit.intake.gathered import CannotRead, Gathered
+from audit.intake.gathering import gather
 from audit.intake.resolve import resolve
 
 __all__ = ["CannotRead", "Gathered", "gather", "read_fleet", "resolve"]

@@ -13,8 +13,8 @@ from pathlib import Path
 
 from lxml import etree
 
-from audit.intake.gathering import gather
 from audit.intake.gathered import Gathered
+from audit.intake.gathering import gather
 from audit.intake.opening import find_workbooks
 from audit.intake.resolve.names import exact
 from audit.intake.sitemap import NAME as SITE_MAP

@@ -8,7 +8,7 @@ import numpy as np
 import pandas as pd
 
 from audit.fleet.column import NO_ROW, UNKNOWN, YES, Integers
-from audit.fleet.fleet import Complaint, Fleet, Question, Table
+from audit.fleet.fleet import Fleet, Table
 from audit.intake.gathered import Gathered
 from audit.intake.resolve.groups import group_key
 from audit.intake.resolve.ledger import Ledger
@@ -34,20 +34,12 @@ def resolve(gathered: Gathered) -> Fleet:
         links=laid.links(),
         book=gathered.book,
         inputs=gathered.inputs,
-        complaints=(*gathered.complaints, *_distinct(ledger.complaints)),
-        questions=(*gathered.questions, *_distinct_questions(ledger.questions)),
+        complaints=(*gathered.complaints, *dict.fromkeys(ledger.complaints)),
+        questions=(*gathered.questions, *dict.fromkeys(ledger.questions)),
         facts=gathered.facts,
         readings=_kept(laid, tables),
         other_groups=_other_groups(laid.relays, tables["relay"], laid.links()["motor", "relay"]),
     )
-
-
-def _distinct(complaints: list[Complaint]) -> tuple[Complaint, ...]:
-    return tuple(dict.fromkeys(complaints))
-
-
-def _distinct_questions(questions: list[Question]) -> tuple[Question, ...]:
-    return tuple(dict.fromkeys(questions))
 
 
 def _say_unjudged_groups(relays: RelayRows, table: Table, ledger: Ledger) -> None:
