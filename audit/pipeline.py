@@ -16,6 +16,8 @@ from audit.checks.verdicts import NOT_APPLICABLE, Outcome, evaluate_check
 from audit.derivation.groups import with_groups
 from audit.derivation.register_facts import with_register_facts
 from audit.derivation.workings import Workings
+from audit.findings.accepted import read_deviations
+from audit.findings.accepting import with_accepted
 from audit.findings.audit import Audit
 from audit.findings.collect import unproven_and_wanted
 from audit.findings.finding import FindingCode
@@ -125,7 +127,8 @@ def audit_path(
     fleet = read_fleet(path, progress)
     if progress is not None:
         progress("judging")
-    return audit_fleet(fleet, catalogue, audited_on=audited_on or date.today(), packs=packs)
+    audit = audit_fleet(fleet, catalogue, audited_on=audited_on or date.today(), packs=packs)
+    return with_accepted(audit, read_deviations(path))
 
 
 def since_record(audit: Audit, record: Record) -> Audit:

@@ -13,6 +13,8 @@ import numpy as np
 from audit.checks.catalogue import Catalogue, load_catalogue
 from audit.commands.audit import file_name
 from audit.commands.consoles import progress_console, table_console
+from audit.findings.accepted import read_deviations
+from audit.findings.accepting import with_accepted
 from audit.findings.audit import Audit
 from audit.findings.closeout.matching import match
 from audit.findings.closeout.returned import read_returned
@@ -67,7 +69,7 @@ def close_out_of(
     gathered = _gathered(fleet, returned, settings, tell)
     before_fleet = resolve(gathered)
     tell("judging the fleet as it was")
-    before = _audit(before_fleet, catalogue, on)
+    before = with_accepted(_audit(before_fleet, catalogue, on), read_deviations(fleet))
     work = work_rows(before, FindingRenderer(before).all())
     matches = match(work, sheet, stamp(before, work), {row.key: judged_from(row) for row in work})
     later = None

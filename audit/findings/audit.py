@@ -11,6 +11,7 @@ from audit.checks.entry import SEVERITIES
 from audit.checks.ranges import SettingRange
 from audit.checks.verdicts import VERDICT_NAMES, Outcome
 from audit.derivation.workings import Workings
+from audit.findings.accepted import Accepted, DeviationTable
 from audit.findings.collect import DatumWanted, UnprovenGroup
 from audit.findings.finding import FindingCode
 from audit.findings.past import Previous
@@ -36,6 +37,9 @@ class Audit:
     """By name the other setting groups that can be selected, each judged as if it were the active one."""
     previous: Previous | None = None
     """What the record of an earlier audit says of this one, where one was given."""
+    accepted: tuple[Accepted, ...] = ()
+    """Deviations that the site accepted, with the findings that they speak of."""
+    accepted_table: DeviationTable | None = None
 
     def counts(self) -> dict[str, int]:
         """Count verdicts over all checks."""
@@ -53,10 +57,15 @@ class Audit:
         """Count the pairs that are not applicable because no evidence was given."""
         return sum(int(outcome.no_evidence.sum()) for outcome in self.outcomes)
 
+    def counted(self) -> list[FindingCode]:
+        """Give the findings that are not accepted."""
+        left = {one.code for one in self.accepted if one.holds}
+        return [code for code in self.codes if code not in left]
+
     def by_severity(self) -> dict[str, int]:
-        """Count the findings of each severity."""
+        """Count the findings of each severity, those that are accepted left aside."""
         counts: dict[str, int] = dict.fromkeys(SEVERITIES, 0)
-        for code in self.codes:
+        for code in self.counted():
             counts[self.outcomes[code.outcome].check.severity] += 1
         return counts
 

@@ -31,6 +31,7 @@ class FindingRenderer:
         self.trace = Trace(audit.workings)
         self._groups = {name: FindingRenderer(group) for name, group in audit.other_groups.items()}
         self._reasons = Reasons(audit.workings, self.trace)
+        self._accepted = {one.code: one for one in audit.accepted if one.code is not None}
 
     def all(self) -> Iterator[Finding]:
         """Render every finding, in order."""
@@ -42,7 +43,11 @@ class FindingRenderer:
         of_group = self._groups.get(code.group, self)
         outcome = of_group.audit.outcomes[code.outcome]
         of_range = outcome.check.stage == "ranges"
-        return self._with_past(self._of_range(code, outcome.check) if of_range else of_group._breach(code, outcome))
+        finding = self._with_past(self._of_range(code, outcome.check) if of_range else of_group._breach(code, outcome))
+        accepted = self._accepted.get(code)
+        if accepted is None:
+            return finding
+        return replace(finding, status="accepted" if accepted.holds else "returned")
 
     def _with_past(self, finding: Finding) -> Finding:
         """Add how the finding stands to the record of an earlier audit."""

@@ -62,6 +62,7 @@ def close_out(before: Audit, after: Audit, matches: Matches, sheet: tuple[str, s
     items = tuple(
         sorter.sorted(by_key[finding.key]) if finding.key in by_key else sorter.without_a_row(finding)
         for finding in found_before
+        if finding.status != "accepted"
     )
     told = _told(matches.rows, items, altered, export)
     return CloseOut(

@@ -74,7 +74,11 @@ def setting_key(relay: str, setting: str, group: str) -> str:
 def work_rows(audit: Audit, findings: Iterable[Finding]) -> list[WorkRow]:
     """Give the rows of the hand-over, ordered by bus, panel, motor and relay."""
     maker = _Maker(audit)
-    rows = [maker.row(code, finding) for code, finding in zip(audit.codes, findings, strict=True)]
+    rows = [
+        maker.row(code, finding)
+        for code, finding in zip(audit.codes, findings, strict=True)
+        if finding.status != "accepted"
+    ]
     kept = _with_words([row for row in rows if row is not None])
     return sorted(kept, key=lambda row: place_order(row.finding))
 

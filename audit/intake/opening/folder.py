@@ -8,6 +8,8 @@ from audit.intake.opening.kinds import WORKBOOK_SUFFIXES
 
 SUFFIXES = WORKBOOK_SUFFIXES | {".csv", ".tsv"}
 LOCK_BEGINNINGS = ("~$", ".~lock.")
+ACCEPTED_DEVIATIONS = "accepted_deviations"
+"""Name of the table beside the workbooks that says which findings are knowingly left: no data of the site."""
 
 
 def find_workbooks(folder: Path) -> list[Path]:
@@ -22,6 +24,7 @@ def find_workbooks(folder: Path) -> list[Path]:
             entry
             for entry in folder.iterdir()
             if entry.suffix.lower() in SUFFIXES
+            and entry.stem.casefold() != ACCEPTED_DEVIATIONS
             and not entry.name.startswith((".", *LOCK_BEGINNINGS))
             and entry.is_file()
         ),

@@ -12,6 +12,7 @@ import numpy as np
 
 from audit.cautions import CAUTIONS
 from audit.checks.ranges import NO_CHECK
+from audit.findings.accepted import Accepted
 from audit.findings.audit import Audit
 from audit.findings.finding import Finding
 from audit.findings.render import FindingRenderer
@@ -59,8 +60,38 @@ def head(audit: Audit) -> dict[str, Any]:
             "no_evidence": audit.without_evidence(),
             "provisional": audit.provisional(),
             "by_severity": audit.by_severity(),
+            "accepted": sum(one.holds for one in audit.accepted),
         },
+        "accepted_deviations": accepted_deviations(audit),
     }
+
+
+def accepted_deviations(audit: Audit) -> dict[str, Any] | None:
+    """Give the site's table of accepted deviations, and what became of each row."""
+    table = audit.accepted_table
+    if table is None:
+        return None
+    rows = [
+        {
+            "row": one.deviation.row,
+            "motor": one.deviation.motor,
+            "check": one.deviation.check,
+            "setting": one.deviation.setting,
+            "reason": one.deviation.reason,
+            "accepted_by": one.deviation.accepted_by,
+            "until": one.deviation.until.isoformat() if one.deviation.until else None,
+            "state": standing(one),
+        }
+        for one in audit.accepted
+    ]
+    return {"file": table.file, "sha256": table.sha256, "rows": rows}
+
+
+def standing(accepted: Accepted) -> str:
+    """Say what became of an accepted deviation."""
+    if accepted.code is None:
+        return "no longer found"
+    return f"returned: {accepted.returned_because}" if accepted.returned_because else "accepted"
 
 
 def number_or_none(value: float | None) -> float | None:

@@ -32,7 +32,7 @@ def print_findings(audit: Audit, console: Console, *, everything: bool = False) 
         heading = severity_word(severity)
         heading.append(f" · {counted(by_severity[severity], 'finding')}: {MEANING[severity]}", "default")
         console.rule(heading, align="left", style=STYLE[severity])
-        codes = [code for code in audit.codes if audit.outcomes[code.outcome].check.severity == severity]
+        codes = [code for code in audit.counted() if audit.outcomes[code.outcome].check.severity == severity]
         for _, group in groupby(codes, key=lambda code: audit.outcomes[code.outcome].check.key):
             _print_check([renderer.finding(code) for code in group], console, everything=everything)
 

@@ -10,6 +10,7 @@ from rich.text import Text
 
 from audit.cautions import SHORT_CAUTION
 from audit.findings.audit import Audit
+from audit.report.terminal.accepted import print_accepted
 from audit.report.terminal.findings import print_findings
 from audit.report.terminal.lacks import print_complaints, print_data_to_collect
 from audit.report.terminal.since import print_since, print_trends
@@ -21,6 +22,7 @@ def show_audit(audit: Audit, console: Console, written: Sequence[Path] = (), *, 
     print_complaints(audit, console)
     print_data_to_collect(audit, console)
     print_findings(audit, console, everything=everything)
+    print_accepted(audit, console)
     print_trends(audit, console)
     print_since(audit, console)
     console.print()
