@@ -27,6 +27,13 @@ _GROUP = re.compile(
     r"\b(?:setting group|set group|setting grp|group|grp|sg|gr)\s*(?P<group>\d|[a-h])\b"
     r"|^g(?P<short>[1-8])\b|\bg(?P<last>[1-8])$"
 )
+_MEASURED = {
+    "unbalance": "",
+    "phase_sequence": "",
+    "stator_temperature": "highest_running_temperature_c",
+    "bearing_temperature": "",
+}
+"""Elements whose plain words also head what was measured on the motors of a list, and its quantity."""
 _LITTLE = frozenset(
     [
         "data",
@@ -162,11 +169,19 @@ def _composed(folded: str, words: str, unit_text: str, group: str, table: str) -
         if unit_text and read_unit(unit_text, quantity) is None:
             return NOTHING
         return _sure(quantity, words, unit_text, group)
+    if read is not None and table == "motor" and not read.part and _may_be_measured(read.element, folded):
+        may_be = (setting_named(read.element, "trip_pickup"), _MEASURED[read.element])
+        return HeaderMatch(candidates=tuple(name for name in may_be if name), unit_text=unit_text, group=group)
     if read is not None:
         return _of_setting(read.element, read.part, folded, words, unit_text, group)
     names, part = doubtful_elements(folded)
     candidates = tuple(name for element in names if (name := setting_named(element, part or "trip_pickup")) is not None)
     return HeaderMatch(candidates=candidates, unit_text=unit_text, group=group) if candidates else NOTHING
+
+
+def _may_be_measured(element: str, folded: str) -> bool:
+    """Tell whether a header without device number may state what was measured: 'Winding Temp (°C)'."""
+    return element in _MEASURED and not any(c.isdigit() for c in folded)
 
 
 def _of_entries(entries: tuple[Entry, ...], words: str, unit_text: str, group: str) -> HeaderMatch:

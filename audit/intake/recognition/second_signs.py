@@ -116,7 +116,7 @@ def part_by_cells(
     read = read_number_column(sample)
     numbers = np.count_nonzero(read.kinds == KIND_CODES[CellKind.NUMBER])
     if numbers == 0 or numbers < 0.5 * len(judged):
-        return switch if switch and not unit_text else None
+        return switch if switch and not unit_text and not judged else None
     units = {unit_text} if unit_text else {r.unit_text for r in read.odd.values() if r.unit_text}
     choices = [name for name in (level, delay) if name]
     if units:

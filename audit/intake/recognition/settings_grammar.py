@@ -10,38 +10,11 @@ from audit.intake.recognition.folding import fold_header
 from audit.vocabulary.quantities import vocabulary
 
 LONGEST_WORD = 5
-_SAYS_LITTLE = frozenset(
-    [
-        "protection",
-        "element",
-        "function",
-        "phase",
-        "phases",
-        "motor",
-        "value",
-        "current",
-        "relay",
-        "stage",
-        "device",
-        "fault",
-        "unit",
-        "prot",
-        "amps",
-        "volts",
-        "for",
-        "the",
-        "of",
-        "to",
-        "from",
-        "ansi",
-        "iec",
-        "ieee",
-        "c37.2",
-        "no",
-        "range",
-        "select",
-    ]
-)
+_LITTLE_WORDS = """
+    protection element function phase phases motor value current relay stage device fault prot amps volts for the of to
+    from ansi iec ieee c37.2 range select
+"""
+_SAYS_LITTLE = frozenset(_LITTLE_WORDS.split())
 _SAYS_NOTHING = frozenset({"at", "the", "of", "for", "value"})
 
 
