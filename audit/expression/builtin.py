@@ -30,14 +30,17 @@ def _pick(values: tuple[Value, ...], *, greatest: bool) -> Value:
 
 
 def _greater(*values: Value) -> Value:
+    """The greatest of its operands; one alone serves where the others are missing."""
     return _pick(values, greatest=True)
 
 
 def _lesser(*values: Value) -> Value:
+    """The least of its operands; one alone serves where the others are missing."""
     return _pick(values, greatest=False)
 
 
 def _choose(condition: Value, wanted: Value, otherwise: Value) -> Value:
+    """The second operand where the condition holds, the third where it does not, missing where that is unknown."""
     size = np.broadcast_shapes(condition.values.shape, wanted.values.shape, otherwise.values.shape)
     truth = np.broadcast_to(condition.values, size)
     number = wanted.sort == "number"
@@ -49,6 +52,7 @@ def _choose(condition: Value, wanted: Value, otherwise: Value) -> Value:
 
 
 def _known(value: Value) -> Value:
+    """Whether there is a value; never missing itself."""
     truth = np.where(value.missing(), 0, YES).astype(np.int8)
     return Value("truth", truth, np.zeros(1, dtype=np.int8))
 
@@ -75,6 +79,7 @@ def _count_alike(value: Value) -> Value:
 
 
 def _magnitude(value: NDArray[np.float64]) -> NDArray[np.float64]:
+    """The value without its sign."""
     return np.abs(value)
 
 

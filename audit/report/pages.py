@@ -1,4 +1,4 @@
-"""Pages made from the rules and the vocabulary: rules/README.md and rules/QUANTITIES.md."""
+"""Pages made from the rules and the vocabulary: README.md, QUANTITIES.md and FUNCTIONS.md in the folder of rules."""
 
 from __future__ import annotations
 
@@ -10,6 +10,7 @@ from audit.checks.entry import Check
 from audit.checks.wording import requirement_in_words
 from audit.expression.text import render
 from audit.limits.limits import limit_in_words
+from audit.report.function_page import functions_page
 from audit.rule_folder import rules_folder
 from audit.vocabulary.quantities import Quantity, vocabulary
 
@@ -118,11 +119,19 @@ def _quantity_row(quantity: Quantity) -> str:
     return f"| {quantity.name} | {quantity.label} | {kind} | {plausible} | {headers} |"
 
 
+def pages() -> dict[str, str]:
+    """Give every page by its file name."""
+    return {
+        "README.md": rules_page(load_catalogue()),
+        "QUANTITIES.md": quantities_page(),
+        "FUNCTIONS.md": functions_page(MADE),
+    }
+
+
 def main() -> None:
-    """Write both pages."""
-    folder = rules_folder()
-    (folder / "README.md").write_text(rules_page(load_catalogue()), encoding="utf-8")
-    (folder / "QUANTITIES.md").write_text(quantities_page(), encoding="utf-8")
+    """Write every page."""
+    for name, page in pages().items():
+        (rules_folder() / name).write_text(page, encoding="utf-8")
 
 
 if __name__ == "__main__":
