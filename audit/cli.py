@@ -36,7 +36,7 @@ def _day(text: str | None) -> date | None:
         raise typer.BadParameter(f"'{text}' is not a day; write it as 2026-11-30") from None
 
 
-@app.command()
+@app.command(short_help="Judge a fleet; write findings and marked workbooks.")
 def audit(
     fleets: Annotated[
         list[Path], typer.Argument(metavar="FLEET...", help="A folder of workbooks, or one workbook; several sites.")
@@ -75,7 +75,7 @@ def audit(
     )  # fmt: skip
 
 
-@app.command()
+@app.command(short_help="Print the calculation sheet of a motor.")
 def explain(
     fleet: FleetPath,
     tag: Annotated[str, typer.Argument(metavar="TAG", help="The motor.")],
@@ -89,7 +89,7 @@ def explain(
     raise typer.Exit(run_explain(fleet, tag, check, rules=rules, audited_on=_day(on)))
 
 
-@app.command()
+@app.command(short_help="Compare two states of a fleet, or suppose a change.")
 def compare(
     before: Annotated[Path, typer.Argument(metavar="BEFORE", help="A fleet, or the record of an audit.")],
     after: Annotated[Path | None, typer.Argument(metavar="[AFTER]", help="The fleet, or record, as it is now.")] = None,
@@ -120,7 +120,7 @@ def compare(
     )  # fmt: skip
 
 
-@app.command()
+@app.command(short_help="Judge the settings that a contractor left.")
 def closeout(
     returned: Annotated[Path, typer.Argument(metavar="RETURNED", help="The workbook that came back, filled in.")],
     fleet: FleetPath,
@@ -140,7 +140,7 @@ def closeout(
     raise typer.Exit(run_closeout(returned, fleet, settings=settings, out=out, rules=rules, on=_day(on)))
 
 
-@app.command()
+@app.command(short_help="Show how each column of the workbooks was read.")
 def columns(
     fleet: FleetPath,
     save: Annotated[
@@ -153,7 +153,7 @@ def columns(
     raise typer.Exit(run_columns(fleet, save=save))
 
 
-@app.command()
+@app.command(short_help="Write an empty intake workbook.")
 def blank(folder: Annotated[Path, typer.Argument(metavar="DIR", help="Where to write it.")]) -> None:
     """Write an empty intake workbook with notes, units, drop-downs and one example row."""
     from audit.commands.blank import run_blank
@@ -161,7 +161,7 @@ def blank(folder: Annotated[Path, typer.Argument(metavar="DIR", help="Where to w
     raise typer.Exit(run_blank(folder))
 
 
-@app.command()
+@app.command(short_help="List all checks, or show one in full.")
 def checks(
     name: Annotated[str | None, typer.Argument(metavar="NAME", help="One check in full.")] = None,
     verify: Annotated[bool, typer.Option("--verify", help="Run every worked case.")] = False,
@@ -174,7 +174,7 @@ def checks(
     raise typer.Exit(run_checks(name, verify=verify, as_json=json_out, rules=rules))
 
 
-@app.command()
+@app.command(short_help="Write the sample fleet into a folder.")
 def sample(folder: Annotated[Path, typer.Argument(metavar="DIR", help="A folder that does not exist yet.")]) -> None:
     """Put a copy of the sample fleet, an invented site with planted defects, into a folder to try the tool on."""
     from audit.commands.sample import run_sample

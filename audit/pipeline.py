@@ -16,6 +16,7 @@ from audit.checks.verdicts import NOT_APPLICABLE, Outcome, evaluate_check
 from audit.derivation.groups import with_groups
 from audit.derivation.register_facts import with_register_facts
 from audit.derivation.workings import Workings
+from audit.expression.units import nearest
 from audit.findings.accepted import read_deviations
 from audit.findings.accepting import with_accepted
 from audit.findings.audit import Audit
@@ -26,6 +27,7 @@ from audit.findings.history import with_previous
 from audit.findings.other_groups import as_if_active, breaches_of_group
 from audit.fleet.fleet import Fleet
 from audit.intake import read_fleet
+from audit.refusal import Refusal
 from audit.report.record.read import Record
 
 Progress = Callable[[str], None]
@@ -33,8 +35,11 @@ Progress = Callable[[str], None]
 
 def packs_in_scope(catalogue: Catalogue, fleet: Fleet, wanted: Iterable[str] = ()) -> tuple[str, ...]:
     """Give the packs that apply: core always, others when the fleet has their data or the site asks."""
-    asked = {name.casefold().replace("-", " ") for name in wanted}
-    asked |= {name.strip().casefold() for name in fleet.facts.get("packs", "").split(",") if name.strip()}
+    of_site = (name for name in fleet.facts.get("packs", "").split(",") if name.strip())
+    asked = {name.strip().casefold().replace("-", " ") for name in (*wanted, *of_site)}
+    for name in sorted(asked.difference(catalogue.packs())):
+        known = ", ".join(catalogue.packs())
+        raise Refusal(f"'{name}' is not a pack{nearest(name, catalogue.packs())}. Accepted: {known}.")
     chosen = []
     for name in catalogue.packs():
         evidence = catalogue.pack_evidence.get(name, ())

@@ -31,9 +31,14 @@ Lookup = Callable[[str], Meaning | None]
 
 
 def nearest(name: str, known: Iterable[str]) -> str:
-    """Say which known name is nearest to an unknown one."""
-    close = difflib.get_close_matches(name, list(known), n=1, cutoff=0.5)
-    return f"; the nearest known name is '{close[0]}'" if close else ""
+    """Say which known name is nearest to an unknown one, small and capital letters counted alike.
+
+    >>> nearest("bc101", ["FD-101", "BC-101"])
+    "; the nearest known name is 'BC-101'"
+    """
+    by_fold = {one.casefold(): one for one in known}
+    close = difflib.get_close_matches(name.casefold(), list(by_fold), n=1, cutoff=0.5)
+    return f"; the nearest known name is '{by_fold[close[0]]}'" if close else ""
 
 
 class UnitCheck:

@@ -187,3 +187,10 @@ def test_the_inputs_are_never_written_to(
     before = {path: path.read_bytes() for path in sample_folder().glob("*.*") if path.is_file()}
     run(capsys, monkeypatch, "audit", str(sample_folder()), "--out", str(tmp_path / "out"))
     assert {path: path.read_bytes() for path in sample_folder().glob("*.*") if path.is_file()} == before
+
+
+def test_a_pack_that_does_not_exist(refused, tmp_path: Path) -> None:
+    fleet = motors(tmp_path / "motors.xlsx", *GOOD)
+    message = refused(fleet, "--pack", "metring")
+    assert "'metring' is not a pack" in message
+    assert "nearest known name is 'metering'" in message

@@ -37,13 +37,15 @@ def print_summary(audit: Audit, console: Console) -> None:
 
 def _verdict_table(audit: Audit) -> Table:
     counts = audit.counts()
+    further = len(audit.codes) - counts["breach"]
+    of_ranges = f"; {counted(further, 'further finding')} on ranges and setting groups" if further else ""
     table = Table(box=None, pad_edge=False, show_header=False)
     table.add_column(justify="right")
     table.add_column()
     table.add_column(overflow="fold")
     notes = {
-        "meets": f"of these and the breaches {audit.provisional():,} are provisional: they rest on an assumption",
-        "breach": "a finding each",
+        "meets": f"{audit.provisional():,} of these and the breaches are provisional: they rest on an assumption",
+        "breach": f"a finding each{of_ranges}",
         "unproven": "a datum is missing; see data to collect",
         "not applicable": f"a plant fact makes it so; for {audit.without_evidence():,} no optional evidence was given",
     }

@@ -80,9 +80,11 @@ def _scope(audit: Audit) -> list[tuple[str, str]]:
 
 def _verdicts(audit: Audit) -> list[tuple[str, str]]:
     counts = audit.counts()
+    further = len(audit.codes) - counts["breach"]
+    of_ranges = f"; {further:,} further on ranges and setting groups" if further else ""
     return [
         ("meets", f"{counts['meets']:,}"),
-        ("breach", f"{counts['breach']:,}"),
+        ("breach", f"{counts['breach']:,}, a finding each{of_ranges}"),
         ("provisional", f"{audit.provisional():,} of meets and breach rest on an assumption"),
         ("unproven", f"{counts['unproven']:,} for want of a datum (sheet 'Data to collect')"),
         (

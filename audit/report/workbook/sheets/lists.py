@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.checks.entry import SEVERITIES
@@ -9,6 +11,7 @@ from audit.findings.audit import Audit
 from audit.report.workbook.sheets.layout import LETTERS, page, table, title
 
 MOST_NAMES = 40
+MOST_CHECKS = 12
 
 
 def write_data_to_collect(audit: Audit, sheet: Worksheet) -> None:
@@ -19,8 +22,7 @@ def write_data_to_collect(audit: Audit, sheet: Worksheet) -> None:
     rows = []
     for wanted in audit.data_to_collect:
         keys = audit.fleet.tables[wanted.subject].keys
-        names = ", ".join(keys[number] for number in wanted.rows[:MOST_NAMES].tolist())
-        more = f" … {len(wanted.rows)} in all" if len(wanted.rows) > MOST_NAMES else ""
+        names = [keys[number] for number in wanted.rows[:MOST_NAMES].tolist()]
         counts = [wanted.by_severity[severity] or "" for severity in SEVERITIES]
         rows.append(
             [
@@ -29,14 +31,24 @@ def write_data_to_collect(audit: Audit, sheet: Worksheet) -> None:
                 len(wanted.rows),
                 wanted.verdicts(),
                 *counts,
-                names + more,
-                ", ".join(wanted.checks),
+                _some(names, len(wanted.rows)),
+                _some(wanted.checks[:MOST_CHECKS], len(wanted.checks)),
             ]
         )
     letters = [LETTERS[severity] for severity in SEVERITIES]
     headings = ("datum", "of", "how many", "verdicts", *letters, "which", "checks")
-    table(sheet, row, headings, (34, 8, 8, 8, 6, 6, 6, 6, 60, 60), rows)
+    table(sheet, row, headings, (34, 8, 10, 9, 6, 6, 6, 6, 60, 60), rows)
     page(sheet, audit.fleet.site)
+
+
+def _some(shown: Sequence[str], number: int) -> str:
+    """Write the first of many names, and how many there are.
+
+    >>> _some(["P-1", "P-2"], 2), _some(["P-1", "P-2"], 1200)
+    ('P-1, P-2', 'P-1, P-2 … 1,200 in all')
+    """
+    more = f" … {number:,} in all" if number > len(shown) else ""
+    return ", ".join(shown) + more
 
 
 def write_inputs(audit: Audit, sheet: Worksheet) -> None:

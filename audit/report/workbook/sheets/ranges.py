@@ -17,7 +17,7 @@ HEADINGS = (
     "motor", "setting", "unit", "present", "low", "high", "where the present value lies", "state", "low set by",
     "high set by", "preferred low", "preferred high",
 )  # fmt: skip
-WIDTHS = (14, 30, 7, 11, 11, 11, 30, 14, 30, 30, 11, 11)
+WIDTHS = (14, 30, 7, 11, 11, 11, 30, 14, 30, 30, 15, 15)
 CELLS = 21
 _PICTURE = 7
 
