@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Collection, Mapping
 from dataclasses import dataclass, field
 from datetime import date
@@ -32,6 +33,7 @@ class State(StrEnum):
     MISSING = "missing from the sheet"
 
 
+_ACCEPT = re.compile(r"\b(?:accept\w*|leave as is|deviation)\b", re.IGNORECASE)
 CLOSED = (State.VERIFIED, State.REPORTED)
 MEANING = {
     State.VERIFIED: "as-left as issued, inside the range, and read from an export dated after the work",
@@ -69,6 +71,12 @@ class Sorted:
     exported_text: str = ""
     questions: tuple[str, ...] = ()
     remarks: tuple[str, ...] = field(default=())
+
+    @property
+    def proposes_to_accept(self) -> str:
+        """Give the remark that proposes to leave the finding, or ''; it takes effect only in the site's own table."""
+        remark = self.matched.row.text("remark") if self.matched is not None and self.matched.row is not None else ""
+        return remark if _ACCEPT.search(remark) else ""
 
 
 class Sorter:

@@ -50,6 +50,16 @@ def closeout_part(result: CloseOut) -> dict[str, Any]:
         "remarks": list(result.matches.remarks),
         "rows_without_a_finding": list(result.matches.unknown_keys),
         "findings": [_item(item) for item in result.items],
+        "proposed_deviations": [
+            {
+                "motor": item.finding.motor or item.finding.name,
+                "check": item.finding.check,
+                "setting": item.finding.judges,
+                "reason": item.proposes_to_accept,
+            }
+            for item in result.items
+            if item.proposes_to_accept
+        ],
         "new_findings": [finding_part(finding) for finding in result.new_findings],
         "hand_over": [finding_part(finding) for finding in result.hand_over_findings],
         "altered": [_altered(change) for change in result.altered],

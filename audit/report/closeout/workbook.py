@@ -10,6 +10,7 @@ from openpyxl.cell import Cell
 from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.cautions import CAUTIONS
+from audit.findings.accepted import HEADINGS as DEVIATION_HEADINGS
 from audit.findings.closeout.sort import CloseOut
 from audit.findings.closeout.states import CLOSED, MEANING, Sorted
 from audit.findings.finding import Finding
@@ -19,7 +20,7 @@ from audit.report.record.parts import tool_version
 from audit.report.workbook.sheets.cover import pairs, sign_off
 from audit.report.workbook.sheets.layout import FILLS, LETTERS, fill, new_sheet, page, put, table, title
 
-CLOSE_OUT, ROWS, NEW, ALTERED = "Close-out", "Findings", "New findings", "Altered"
+CLOSE_OUT, ROWS, NEW, ALTERED, PROPOSED = "Close-out", "Findings", "New findings", "Altered", "Proposed to accept"
 HEADINGS = (
     "", "state", "bus", "panel", "motor", "relay", "function", "what was wrong", "setting", "unit", "present", "low",
     "high", "issued", "as-found", "as-left", "export", "reason, questions and remarks", "done by", "witnessed by",
@@ -43,6 +44,7 @@ def write_closeout_workbook(result: CloseOut, folder: Path) -> Path:
     _rows(result, sheet(ROWS))
     _new(result, sheet(NEW))
     _altered(result, sheet(ALTERED))
+    _proposed(result, sheet(PROPOSED))
     target = folder / "closeout.xlsx"
     unfinished = folder / ".closeout-being-written.xlsx"
     try:
@@ -192,4 +194,26 @@ def _altered(result: CloseOut, sheet: Worksheet) -> None:
     table(
         sheet, row, ("relay", "motor", "setting", "what", "before", "after", "cell"), (14, 12, 40, 16, 16, 16, 34), rows
     )
+    page(sheet, result.before.fleet.site)
+
+
+def _proposed(result: CloseOut, sheet: Worksheet) -> None:
+    below = "remarks that propose to leave a finding: they take effect only in the site's table accepted_deviations"
+    row = title(sheet, "Proposed to accept", below)
+    rows = [
+        [
+            item.finding.motor or item.finding.name,
+            item.finding.check,
+            item.finding.judges,
+            item.proposes_to_accept,
+            "",
+            "",
+            item.finding.present_text,
+            _end(item.finding.low),
+            _end(item.finding.high),
+        ]
+        for item in result.items
+        if item.proposes_to_accept
+    ]
+    table(sheet, row, DEVIATION_HEADINGS, (11, 36, 30, 50, 16, 12, 12, 10, 10), rows)
     page(sheet, result.before.fleet.site)

@@ -25,7 +25,8 @@ CHECK = "short-circuit-rides-through-start"
 @pytest.fixture(scope="module")
 def audit() -> Audit:
     """1.7 x 600 A = 1,020 A must be ridden through (rules/50-short-circuit.toml); the pickup is 900 A."""
-    motor = {"motor": "P-1", "locked_rotor_a": 600, "full_load_a": 100, "rated_voltage_v": 400, "starting_method": "direct"}
+    motor: dict[str, object] = {"motor": "P-1", "locked_rotor_a": 600, "full_load_a": 100, "rated_voltage_v": 400}
+    motor["starting_method"] = "direct"
     relay = {"short_circuit_trip_on": True, "short_circuit_trip_pickup_a": 900, "relay_tag": "R-1"}
     found = audit_fleet(fleet_of(motor=[motor], relay=[relay]), load_catalogue(), audited_on=TODAY)
     assert CHECK in {found.outcomes[code.outcome].check.key for code in found.codes}

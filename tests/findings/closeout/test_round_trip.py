@@ -107,6 +107,17 @@ def test_every_row_is_sorted_as_written(
     written, result = round_trip(issued, tmp_path, shift, change)
     assert len(written) >= 60
     assert missorted(written, result) == []
+    by_name = {name: key for key, (name, _) in written.items()}
+    altered = {change.name for change in result.altered}
+    relay_of = {row.key: row.relay_key for row in issued.rows}
+    assert relay_of[by_name["not issued, changed in the relay only"]] in altered
+    assert relay_of[by_name["left as it was"]] not in altered
+    said = {(finding.check, finding.motor) for finding in result.hand_over_findings}
+    motor_of = {row.key: row.finding.motor for row in issued.rows}
+    assert ("as-left-equals-issued", motor_of[by_name["further outside"]]) in said
+    assert ("only-asked-settings-altered", motor_of[by_name["not issued, changed in the relay only"]]) in said
+    assert ("as-left-read-from-relay", motor_of[by_name["no day"]]) in said
+    assert not result.is_closed()
 
 
 def test_the_scenarios_reach_every_state(issued: Issued) -> None:

@@ -52,7 +52,8 @@ BANDS = {
     "engineer": "the engineer issues",
     "contractor": "the contractor fills in",
 }
-SCALE = 64
+SCALE = 60
+"""Per cent at which each of the four pages side by side fits on Letter, the narrower of the two papers."""
 _THIN = Side(style="thin", color="B8C0C4")
 
 
