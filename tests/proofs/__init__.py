@@ -1,0 +1,1 @@
+"""Proofs over whole fleets, from workbook to verdict."""
