@@ -3,85 +3,31 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass, field
-from functools import cached_property
 from pathlib import Path
 
-import numpy as np
-
-from audit.fleet.addresses import NO_CELL, SheetBook
-from audit.fleet.fleet import Complaint, InputFile, Question
-from audit.fleet.folding import exact
+from audit.fleet.fleet import Complaint, InputFile
 from audit.intake.candidates import Candidate, candidates_of
-from audit.intake.gathered import CannotRead, ColumnReading, Gathered, SheetReading
+from audit.intake.gathered import CannotRead, Gathered, SheetReading
 from audit.intake.layouts.across import find_across, read_across
-from audit.intake.layouts.anchors import known_tags, owner_of_sheet
+from audit.intake.layouts.anchors import owner_of_sheet
 from audit.intake.layouts.block import read_block
 from audit.intake.layouts.change_log import read_change_log
 from audit.intake.layouts.long import read_long
 from audit.intake.layouts.points import read_points
 from audit.intake.layouts.wide import read_wide
 from audit.intake.opening import UnreadableWorkbook, find_workbooks, open_workbook
-from audit.intake.recognition.blocks import Readings, frame
+from audit.intake.recognition.blocks import frame
 from audit.intake.recognition.decimal_mark import decimal_mark
-from audit.intake.recognition.dictionary import combined_readings
 from audit.intake.recognition.dual_voltage import choose_by_bus
-from audit.intake.recognition.header_rows import Heading
-from audit.intake.recognition.plans import MAPPED, UNREAD, Plan
 from audit.intake.recognition.row_kinds import rows_in_words
-from audit.intake.recognition.sheets import Records, Sheet, said
+from audit.intake.recognition.sheets import Sheet
 from audit.intake.recognition.source import Source
-from audit.intake.recognition.tables import Verdict, table_of
-from audit.intake.sitemap import MappedSheet, SiteMap, load_site_map, same_header
+from audit.intake.recognition.tables import table_of
+from audit.intake.run import Run
+from audit.intake.site_answers import mark_must_run, plans_of_map
+from audit.intake.sitemap import load_site_map
 
 Progress = Callable[[str], None]
-
-
-@dataclass
-class _Run:
-    """What a run has gathered so far."""
-
-    map: SiteMap
-    book: SheetBook = field(default_factory=SheetBook)
-    records: Records = field(default_factory=Records)
-    inputs: list[InputFile] = field(default_factory=list)
-    complaints: list[Complaint] = field(default_factory=list)
-    questions: list[Question] = field(default_factory=list)
-    readings: list[Readings] = field(default_factory=list)
-    columns: list[ColumnReading] = field(default_factory=list)
-    sheets: list[SheetReading] = field(default_factory=list)
-
-    @cached_property
-    def tags(self) -> dict[str, tuple[str, str]]:
-        """Give the tags of motors and relays that lists name; asked for once all lists are read."""
-        kinds = {"motor": "motor", "relay": "relay", "relay_tag": "relay"}
-        return known_tags(
-            (kinds[block.quantity], text)
-            for block in self.readings
-            if block.quantity in kinds
-            for text in block.text.tolist()
-            if isinstance(text, str)
-        )
-
-    def records_named(self, quantity: str) -> dict[str, list[int]]:
-        """Give the records of the lists by the text of a quantity: a tag, a fuse, a bus."""
-        named: dict[str, list[int]] = {}
-        for block in self.readings:
-            if block.quantity == quantity and block.table in ("motor", "bus"):
-                for record, text in zip(block.record.tolist(), block.text.tolist(), strict=True):
-                    if isinstance(text, str):
-                        named.setdefault(exact(text), []).append(record)
-        return named
-
-    def full_load_a(self) -> dict[int, float]:
-        """Give the full-load current of the motor records that state it in amperes."""
-        return {
-            record: number
-            for block in self.readings
-            if block.quantity == "full_load_a" and block.table == "motor"
-            for record, number, unit in zip(block.record.tolist(), block.number.tolist(), block.unit, strict=True)
-            if number == number and unit in ("", "a")
-        }
 
 
 def gather(path: Path, progress: Progress | None = None) -> Gathered:
@@ -96,7 +42,7 @@ def gather(path: Path, progress: Progress | None = None) -> Gathered:
     if not path.exists():
         raise CannotRead(_nothing(path, "there is no such file or folder", "a folder of workbooks, or a workbook"))
     folder = path if path.is_dir() else path.parent
-    run = _Run(load_site_map(folder))
+    run = Run(load_site_map(folder))
     files = find_workbooks(path)
     if not files:
         raise CannotRead(
@@ -113,7 +59,7 @@ def gather(path: Path, progress: Progress | None = None) -> Gathered:
     for candidate in sorted(candidates, key=Candidate.order):
         _read(candidate, run)
     choose_by_bus(run.readings, run.complaints, run.book)
-    _must_run(run)
+    mark_must_run(run)
     site = run.map.site or (path.name if path.is_dir() else path.stem)
     facts = {**run.map.facts, "site": site}
     return Gathered(
@@ -129,11 +75,11 @@ def gather(path: Path, progress: Progress | None = None) -> Gathered:
     )
 
 
-def _nothing(path: Path, found: str, expected: str) -> Complaint:
-    return Complaint(path.name, "", "", found, expected, "Check the path.", weight="stop")
+def _nothing(path: Path, found: str, expected: str, advice: str = "Check the path.") -> Complaint:
+    return Complaint(path.name, "", "", found, expected, advice, weight="stop")
 
 
-def _candidates(file: Path, run: _Run) -> list[Candidate]:
+def _candidates(file: Path, run: Run) -> list[Candidate]:
     """Open a workbook and look at each of its sheets."""
     try:
         workbook = open_workbook(file)
@@ -149,7 +95,7 @@ def _candidates(file: Path, run: _Run) -> list[Candidate]:
     return found
 
 
-def _ensure_motor_list(candidates: list[Candidate], path: Path, run: _Run) -> None:
+def _ensure_motor_list(candidates: list[Candidate], path: Path, run: Run) -> None:
     """Let the best sheet with tags be the motor list where no sheet is one; refuse where none can be."""
     if any(candidate.table == "motor" for candidate in candidates):
         return
@@ -164,21 +110,12 @@ def _ensure_motor_list(candidates: list[Candidate], path: Path, run: _Run) -> No
         candidates[index].verdict = verdict
         candidates[index].layout = "wide"
         return
-    complaint = _nothing(path, "no sheet holds a list of motors", "a sheet with a tag and rated data for each motor")
-    raise CannotRead(
-        Complaint(
-            complaint.file,
-            "",
-            "",
-            complaint.found,
-            complaint.expected,
-            "Name the sheet, its header row and its columns in fleet.toml.",
-            weight="stop",
-        )
-    )
+    found, wanted = "no sheet holds a list of motors", "a sheet with a tag and rated data for each motor"
+    advice = "Name the sheet, its header row and its columns in fleet.toml."
+    raise CannotRead(_nothing(path, found, wanted, advice))
 
 
-def _read(candidate: Candidate, run: _Run) -> None:
+def _read(candidate: Candidate, run: Run) -> None:
     """Read one sheet by its layout."""
     grid = candidate.grid
     source = Source(
@@ -203,7 +140,7 @@ def _read(candidate: Candidate, run: _Run) -> None:
     run.sheets.append(SheetReading(candidate.file, grid.name, table, candidate.layout, row, depth))
 
 
-def _by_layout(candidate: Candidate, sheet: Sheet, run: _Run) -> bool:
+def _by_layout(candidate: Candidate, sheet: Sheet, run: Run) -> bool:
     mapped = candidate.mapped
     relay, group = (mapped.relay, mapped.group) if mapped else ("", "")
     if candidate.layout == "long" and candidate.listed:
@@ -221,39 +158,9 @@ def _by_layout(candidate: Candidate, sheet: Sheet, run: _Run) -> bool:
         return read_change_log(sheet, candidate.log, run.records_named("motor"), run.records_named("bus_name"))
     if candidate.layout == "wide" and candidate.heading and candidate.verdict:
         verdict = candidate.verdict
-        columns = _mapped(candidate.heading, verdict, mapped, sheet.source)
+        columns = plans_of_map(candidate.heading, verdict, mapped, sheet.source)
         return read_wide(sheet, candidate.heading, verdict.table, verdict.matches, candidate.last_row, columns, group)
     return False
-
-
-def _mapped(heading: Heading, verdict: Verdict, entry: MappedSheet | None, source: Source) -> dict[int, Plan]:
-    """Give the plans of the columns that the site map speaks of."""
-    plans: dict[int, Plan] = {}
-    labels = {column: heading.label(column) for column in heading.texts}
-    for said_of in entry.columns if entry else ():
-        headed = [c for c, label in labels.items() if said_of.header and same_header(label, said_of.header)]
-        if said_of.column and (not said_of.header or said_of.column in headed):
-            headed = [said_of.column]
-        if not headed:
-            source.remark(
-                -1,
-                f"fleet.toml speaks of a column '{said_of.header or said_of.column}', which the sheet does not have",
-                "headers as they stand on the sheet",
-                "Correct the header in fleet.toml.",
-            )
-        combined = said_of.quantity if said_of.quantity in combined_readings() else ""
-        for column in headed:
-            found = verdict.matches.get(column)
-            plans[column] = Plan(
-                column,
-                labels.get(column, ""),
-                "" if combined else said_of.quantity,
-                combined,
-                said_of.unit,
-                found.group if found else "",
-                MAPPED if said_of.quantity else UNREAD,
-            )
-    return plans
 
 
 def _say_hidden(sheet: Sheet) -> None:
@@ -267,36 +174,3 @@ def _say_hidden(sheet: Sheet) -> None:
         source.remark(-1, f"{len(grid.hidden_columns)} columns are hidden", "columns that are shown", "They are read.")
     for note in grid.notes:
         source.remark(-1, note, "a workbook whose cells can be told fully")
-
-
-def _must_run(run: _Run) -> None:
-    """Mark the motors that the site map names as must-run."""
-    wanted = {exact(tag) for tag in run.map.must_run}
-    if not wanted:
-        return
-    met: set[str] = set()
-    for block in [block for block in run.readings if block.quantity == "motor" and block.table == "motor"]:
-        tags = [exact(text) if isinstance(text, str) else "" for text in block.text.tolist()]
-        places = np.array([place for place, tag in enumerate(tags) if tag in wanted], dtype=np.int64)
-        met.update(tags[place] for place in places.tolist())
-        if places.size:
-            size = len(places)
-            made = said(
-                "must_run", block.record[places], ["yes"] * size, np.full(size, NO_CELL, dtype=np.int64), "fleet.toml"
-            )
-            made.table = "motor"
-            run.readings.append(made)
-    for tag in run.map.must_run:
-        if exact(tag) not in met:
-            run.complaints.append(
-                Complaint(
-                    "fleet.toml",
-                    "",
-                    "",
-                    f"must_run names '{tag}', which no motor list has",
-                    "tags of the motor list",
-                    "Correct the tag.",
-                    "must_run",
-                    weight="remark",
-                )
-            )
