@@ -44,7 +44,6 @@ _SURE_WORDS = frozenset(
         "ohms",
     ]
 )
-_SAME_SIGN = {"min-1": "r/min", "1/min": "r/min", "ka sym": "ka"}
 
 
 @lru_cache(maxsize=65536)

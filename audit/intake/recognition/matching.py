@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from functools import lru_cache
 
 from audit.intake.celltext.characters import plain
-from audit.intake.recognition.dictionary import TABLES, Entry, combined_readings, dictionary
+from audit.intake.recognition.dictionary import Entry, combined_readings, dictionary
 from audit.intake.recognition.folding import fold_header
 from audit.intake.recognition.header_units import split_units, unit_in_words
 from audit.intake.recognition.settings_grammar import (
@@ -295,11 +295,6 @@ def match_texts(texts: tuple[str, ...], table: str) -> HeaderMatch:
 def _neutral(text: str, table: str) -> bool:
     words = set(fold_header(text).split())
     return words <= (_NEUTRAL - {"relay", "setting", "protection"} if table == "motor" else _NEUTRAL)
-
-
-def match_anywhere(header: str) -> bool:
-    """Tell whether any table knows a text as a header."""
-    return any(match_header(header, table).known for table in TABLES)
 
 
 def near_miss(texts: Sequence[str], table: str) -> str:
