@@ -41,6 +41,7 @@ class RelayChange:
     relay: str
     motor: str
     settings: tuple[str, ...]
+    """Labels of what says something else."""
     follow: tuple[str, ...]
     """Settings whose own cell says what it said before; their primary value follows a base that changed."""
 
@@ -122,8 +123,8 @@ def _relays(changed: Sequence[Change]) -> tuple[RelayChange, ...]:
         RelayChange(
             relay,
             of_relay[0].motor,
-            tuple(change.quantity for change in of_relay if change.kind != "follows"),
-            tuple(change.quantity for change in of_relay if change.kind == "follows"),
+            tuple(change.label for change in of_relay if change.kind != "follows"),
+            tuple(change.label for change in of_relay if change.kind == "follows"),
         )
         for relay, of_relay in by_relay.items()
     )

@@ -66,7 +66,7 @@ def _changed(comparison: Comparison, sheet: Worksheet) -> None:
 def _change_row(change: Change) -> Sequence[object]:
     note: str = "" if change.kind == "changed" else change.kind
     if change.follows:
-        note = f"its cell says what it said; follows {', '.join(change.follows)}"
+        note = f"its cell says what it said; follows {', '.join(change.follows).replace('_', ' ')}"
     return (
         change.subject,
         change.name,
@@ -115,7 +115,7 @@ def _tenth(value: float | None) -> object:
 
 def _touched(comparison: Comparison, sheet: Worksheet) -> None:
     below = f"nothing of their own on the chain changed; figures count from a move of {comparison.share_pct:g} % on"
-    row = title(sheet, "Touched without a change of their own", below)
+    row = title(sheet, "Touched by changes of others", below)
     rows = (
         (
             one.name,

@@ -18,6 +18,7 @@ from audit.findings.comparison.changes import Change
 from audit.findings.comparison.looked_at import BY_HAND, LookedAt
 from audit.findings.comparison.provable import ProofChange
 from audit.findings.comparison.standing import FindingChange
+from audit.findings.comparison.touched import Touched
 from audit.report.terminal.style import WIDE, counted, severity_word
 
 MOST_LINES = 30
@@ -85,7 +86,7 @@ class Printer:
         for starts in comparison.starts[: self.most]:
             self.console.print(Text(f"  {starts.motor}: recorded starts, {starts.words()}"))
         for relay in comparison.relays[: self.most]:
-            names = ", ".join((*relay.settings, *(f"{name} (follows)" for name in relay.follow)))
+            names = ", ".join((*relay.settings, *(f"{label} (follows)" for label in relay.follow)))
             of = f" of {relay.motor}" if relay.motor and relay.motor != relay.relay else ""
             self.console.print(Padding(Text(f"export of relay {relay.relay}{of} differs: {names}"), (0, 0, 0, 2)))
         if not number and not comparison.starts:
@@ -108,16 +109,17 @@ class Printer:
         """Print the findings by how they stand; those still there are counted only."""
         counts = comparison.standing_counts()
         self.heading(f"Findings · {', '.join(f'{number:,} {standing}' for standing, number in counts.items())}")
-        rows = [self._finding(f) for f in comparison.findings if f.standing != "still there"]
+        merged: dict[tuple[str, str, str, str], list[str]] = {}
+        for finding in comparison.findings:
+            if finding.standing != "still there":
+                told = finding.standing, finding.severity, finding.check, _because_of(finding)
+                merged.setdefault(told, []).append(finding.name)
+        rows: list[list[str | Text]] = [
+            [standing, severity_word(severity), _names(names), check, because]
+            for (standing, severity, check, because), names in merged.items()
+        ]
         if rows:
             self.table(("", "severity", "of", "check", "because"), rows)
-
-    def _finding(self, finding: FindingChange) -> list[str | Text]:
-        margins = ""
-        if finding.margin_before_pct is not None and finding.margin_after_pct is not None:
-            margins = f"margin {finding.margin_before_pct:.1f} % to {finding.margin_after_pct:.1f} %; "
-        because = finding.why_gone or f"{margins}{finding.after_text or finding.before_text}"
-        return [finding.standing, severity_word(finding.severity), finding.name, finding.check, because]
 
     def proofs(self, heading: str, proofs: Sequence[ProofChange]) -> None:
         """Print the verdicts that were lost, and what is lacking."""
@@ -133,24 +135,22 @@ class Printer:
     def touched(self, comparison: Comparison) -> None:
         """Print whom changes of others touch, by the change that does."""
         number = counted(len(comparison.touched), "move")
-        self.heading(f"Touched without a change of their own · {number}, of figures over {comparison.share_pct:g} %")
+        self.heading(f"Touched by changes of others · {number}, of figures over {comparison.share_pct:g} %")
         if not comparison.touched:
             self.console.print("  nobody")
-        lines = 0
-        for root, group in groupby(
-            sorted(comparison.touched, key=lambda one: chain_words(one.chain)[:1]),
-            key=lambda one: chain_words(one.chain)[0],
-        ):
-            if self.most is not None and lines >= self.most:
-                self.console.print("  … and more, all in comparison.json and in the workbook")
-                break
+        by_root: dict[str, list[Touched]] = {}
+        for one in comparison.touched:
+            by_root.setdefault(chain_words(one.chain)[0], []).append(one)
+        for root, group in by_root.items():
             self.console.print(Text(f"  {root}", "bold"))
-            rows = [
-                (one.name, one.what, one.before_text, one.after_text, " -> ".join(chain_words(one.chain)[1:]))
-                for one in group
-            ]
-            lines += len(rows)
-            self.table(("of", "what moved", "before", "after", "over"), rows)
+            merged: dict[tuple[str, ...], list[str]] = {}
+            for one in group:
+                way = " -> ".join(chain_words(one.chain)[1:])
+                merged.setdefault((one.what, one.before_text, one.after_text, way), []).append(one.name)
+            self.table(
+                ("of", "what moved", "before", "after", "over"),
+                [(_names(names), *told) for told, names in merged.items()],
+            )
 
     def looked_at(self, comparison: Comparison) -> None:
         """Print what has to be looked at again, change by change, with its verdicts."""
@@ -170,8 +170,19 @@ class Printer:
 
 
 def _open_line(one: LookedAt) -> tuple[str, str, str]:
-    names = ", ".join(one.names[:MOST_NAMES]) + (f" … ({len(one.names)} in all)" if len(one.names) > MOST_NAMES else "")
-    return one.check, one.verdict or BY_HAND, names or f"{one.at}: {one.why}"
+    return one.check, one.verdict or BY_HAND, _names(one.names) or one.at
+
+
+def _names(names: Sequence[str]) -> str:
+    more = f" … ({len(names)} in all)" if len(names) > MOST_NAMES else ""
+    return ", ".join(names[:MOST_NAMES]) + more
+
+
+def _because_of(finding: FindingChange) -> str:
+    margins = ""
+    if finding.margin_before_pct is not None and finding.margin_after_pct is not None:
+        margins = f"margin {finding.margin_before_pct:.1f} % to {finding.margin_after_pct:.1f} %; "
+    return finding.why_gone or f"{margins}{finding.after_text or finding.before_text}"
 
 
 def _because(chain: Chain) -> str:

@@ -90,7 +90,7 @@ def test_a_change_of_the_motor_s_own_relay_touches_nobody(judged: Judge) -> None
     after["relay"][0]["short_circuit_trip_pickup_a"] = 700
     comparison = compare(judged(**plant(1)), judged(**after))
     assert comparison.touched == ()
-    assert [(one.relay, one.settings) for one in comparison.relays] == [("R-1", ("short_circuit_trip_pickup_a",))]
+    assert [(one.relay, one.settings) for one in comparison.relays] == [("R-1", ("short-circuit pickup",))]
 
 
 def test_like_motors_are_touched_when_one_of_them_is_set_otherwise(judged: Judge) -> None:

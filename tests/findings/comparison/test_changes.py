@@ -55,7 +55,7 @@ def test_a_pickup_in_multiples_follows_the_ct_that_the_relay_is_set_to(tmp_path:
     assert pickup.kind == "follows"
     assert pickup.follows == ("relay_ct_primary_a",)
     (relay,) = comparison.relays
-    assert (relay.settings, relay.follow) == (("relay_ct_primary_a",), ("short_circuit_trip_pickup_a",))
+    assert (relay.settings, relay.follow) == (("CT primary set in the relay",), ("short-circuit pickup",))
 
 
 def test_a_pickup_that_is_typed_anew_does_not_only_follow(tmp_path: Path, catalogue: Catalogue) -> None:
