@@ -11,7 +11,6 @@ from importlib.resources import files
 from audit.intake.recognition.folding import compact, fold_header
 from audit.vocabulary.quantities import Quantity, vocabulary
 
-TABLES = ("motor", "relay", "bus", "start")
 SHORTEST_COMPACT = 5
 _BUS_WORDS = frozenset({"bus", "system", "fault", "busbar", "incomer", "base", "x/r", "nominal"})
 _RELAY_WORDS = frozenset({"relay", "ied", "group", "export", "set", "setting"})

@@ -6,8 +6,8 @@ from collections.abc import Sequence
 from dataclasses import dataclass, field
 
 from audit.intake.celltext import cell_text
+from audit.intake.gathered import TABLES
 from audit.intake.opening import SheetGrid
-from audit.intake.recognition.dictionary import TABLES
 from audit.intake.recognition.header_units import is_unit
 from audit.intake.recognition.matching import NOTHING, HeaderMatch, match_header, match_texts
 from audit.vocabulary.quantities import vocabulary
