@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from math import sqrt
 
-from audit.engineering.motor_contribution import motor_fault_contribution_ka, motor_x_to_r_ratio
+from audit.engineering.motor_contribution import motor_x_to_r_ratio
 from audit.engineering.offset_current import (
     offset_first_peak_ratio,
     offset_peak_half_cycle_ratio,
@@ -15,18 +15,9 @@ from audit.engineering.offset_current import (
     x_to_r_from_time_constant_ratio,
 )
 from audit.engineering.peak_short_circuit import short_circuit_peak_ratio
-from audit.engineering.rated_point import full_load_from_power_a
+from tests.published.nameplate import motor_contribution
 
 VALUES = "03-asymmetry"
-
-
-def motor_contribution(
-    rated_power_kw, rated_voltage_v, efficiency_pct, power_factor, locked_rotor_multiple, voltage_factor_pu
-):
-    full_load = full_load_from_power_a(rated_power_kw, rated_voltage_v, efficiency_pct, power_factor)
-    return motor_fault_contribution_ka(
-        locked_rotor_multiple * full_load, rated_voltage_v, rated_voltage_v, voltage_factor_pu
-    )
 
 
 FORMULAS = {

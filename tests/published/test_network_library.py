@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-from audit.engineering.motor_contribution import motor_fault_contribution_ka
 from audit.engineering.peak_short_circuit import short_circuit_peak_ratio
-from audit.engineering.rated_point import full_load_from_power_a
 from audit.engineering.terminal_fault import phase_to_phase_fault_a, terminal_three_phase_fault_a
 from audit.engineering.voltage_dip import fault_level_mva
+from tests.published.nameplate import motor_contribution
 
 VALUES = "../network_library/results"
 # the network of make_results.py: 6 kV, 250 MVA; voltage factors of IEC 60909 above 1 kV; cable hot at 80 C
@@ -15,15 +14,6 @@ BUS_FAULT_KA = 250.0 / fault_level_mva(1.0, VOLTAGE_V).item()
 GREATEST_VOLTAGE_FACTOR = 1.1
 LEAST_VOLTAGE_FACTOR = 1.0
 HOT_OVER_COLD = 1 + 0.004 * (80 - 20)
-
-
-def motor_contribution(
-    rated_power_kw, rated_voltage_v, efficiency_pct, power_factor, locked_rotor_multiple, voltage_factor_pu
-):
-    full_load = full_load_from_power_a(rated_power_kw, rated_voltage_v, efficiency_pct, power_factor)
-    return motor_fault_contribution_ka(
-        locked_rotor_multiple * full_load, rated_voltage_v, rated_voltage_v, voltage_factor_pu
-    )
 
 
 def greatest_fault(x_to_r_ratio, length_km, r_ohm_per_km, x_ohm_per_km):
