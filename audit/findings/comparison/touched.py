@@ -36,13 +36,17 @@ class Touched:
         )
 
 
+NOT_FOUND: Chain = (Step("", "", "", "cause not found:", "", "to be looked at by hand"),)
+"""Nothing passes by silence: what moved without a changed datum beneath is shown as well."""
+
+
 def touched(pair: Pair, changes: Changes, chains: Chains, moved: Iterable[Move]) -> tuple[Touched, ...]:
     """Give the moves whose roots are all changes of others."""
     labels = pair.after.workings.quantities
     found = []
     for move in moved:
-        ways = chains.of_nodes(move.nodes, move.subject, move.row)
-        if not ways or any(own(pair, way[0], move) for way in ways) or all(_only_the_day(way) for way in ways):
+        ways = chains.of_nodes(move.nodes, move.subject, move.row) or (NOT_FOUND,)
+        if any(own(pair, way[0], move) for way in ways) or all(_only_the_day(way) for way in ways):
             continue
         label = labels[move.setting].label if move.setting in labels else ""
         name = pair.keys(move.subject)[move.row]

@@ -6,10 +6,15 @@ from collections.abc import Callable
 
 from audit.findings.audit import Audit
 from audit.findings.comparison import Comparison, compare
-from audit.findings.comparison.chains import Step, best
+from audit.findings.comparison.alignment import Pair
+from audit.findings.comparison.chains import Chains, Step, best
+from audit.findings.comparison.changes import Changes
+from audit.findings.comparison.moves import Move
+from audit.findings.comparison.touched import touched
 from tests.findings.comparison.conftest import MOTOR, RELAY, numbered, plant
 
 Judge = Callable[..., Audit]
+DEVICE = "device-interrupts-bus-fault"
 
 
 def chains(comparison: Comparison) -> dict[tuple[str, str], list[str]]:
@@ -22,7 +27,7 @@ def chains(comparison: Comparison) -> dict[tuple[str, str], list[str]]:
 def test_a_raised_fault_level_leads_to_every_device_of_the_bus(judged: Judge) -> None:
     # 25 kA devices: margin 25 / 20 - 1 = 25 % before, 25 / 24 - 1 = 4.2 % after
     comparison = compare(judged(**plant()), judged(**plant(fault_max_ka=24)))
-    moved = [one for one in comparison.touched if one.move.check == "device-interrupts-bus-fault"]
+    moved = [one for one in comparison.touched if one.move.check == DEVICE]
     assert [one.name for one in moved] == ["P-1", "P-2", "P-3"]
     assert {(one.before_text, one.after_text) for one in moved} == {("25.0 %", "4.2 %")}
     expected = ["B-1 fault_max_ka", "B-1 greatest_fault_at_device_ka"]
@@ -120,3 +125,11 @@ def test_a_step_says_by_how_much_a_number_moved() -> None:
     step = Step("bus", "B2", "fault_max_ka", "greatest fault current", "20 kA", "23.6 kA", 18.0)
     assert step.words() == "bus B2: greatest fault current up 18 % (20 kA to 23.6 kA)"
     assert Step("motor", "P-9", "", "motor", "", "added").words() == "P-9: motor added"
+
+
+def test_what_moved_without_a_changed_datum_is_shown_as_well(judged: Judge) -> None:
+    pair = Pair(judged(**plant(1)), judged(**plant(1)))
+    changes = Changes(pair)
+    move = Move("motor", 0, "verdict", DEVICE, "50", "", "meets", "breach", nodes=(None,))
+    (one,) = touched(pair, changes, Chains(pair, changes), [move])
+    assert one.words() == f"cause not found: to be looked at by hand -> P-1: {DEVICE} meets to breach"
