@@ -92,7 +92,7 @@ def explain(
 @app.command(short_help="Compare two states of a fleet, or suppose a change.")
 def compare(
     before: Annotated[Path, typer.Argument(metavar="BEFORE", help="A fleet, or the record of an audit.")],
-    after: Annotated[Path | None, typer.Argument(metavar="[AFTER]", help="The fleet, or record, as it is now.")] = None,
+    after: Annotated[Path | None, typer.Argument(metavar="AFTER", help="The fleet, or record, as it is now.")] = None,
     suppose: Annotated[
         list[str] | None,
         typer.Option("--set", metavar="WHAT", help="Suppose a value, e.g. bus=B2:fault_max_ka=31.5; several are fine."),

@@ -11,10 +11,11 @@ from audit.checks.verdicts import UNPROVEN
 from audit.expression.values import YES
 from audit.findings.audit import Audit
 from audit.findings.comparison.alignment import Pair
-from audit.findings.comparison.chains import Chains, chain_words
+from audit.findings.comparison.chains import Chains
 from audit.findings.comparison.changes import Change, Changes
 from audit.findings.comparison.moves import nodes_of, outcomes_by_key
 from audit.findings.comparison.standing import identity
+from audit.findings.comparison.steps import chain_words
 from audit.findings.past import Cleared, Identity, Past, Previous, SettingDrift, identity_of
 from audit.fleet.folding import exact
 from audit.refusal import Refusal

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
-from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
@@ -15,56 +14,12 @@ from audit.expression.nodes import Call, Name, Node, names_over_rows, parts_of
 from audit.expression.values import NO, UNKNOWN, evaluate
 from audit.findings.comparison.alignment import Pair
 from audit.findings.comparison.changes import Changes
+from audit.findings.comparison.members import Deciding, Members
 from audit.findings.comparison.starts import StartsChange
+from audit.findings.comparison.steps import Chain, Step, best
 from audit.fleet.column import NO_ROW, Integers
 from audit.fleet.folding import exact
 from audit.vocabulary.quantities import Quantity
-
-MOST_CHAINS = 24
-"""A bus total in which hundreds of motors changed keeps this many ways back."""
-
-
-@dataclass(frozen=True, slots=True)
-class Step:
-    """A changed datum, or a derived quantity that moved with it."""
-
-    subject: str
-    name: str
-    quantity: str
-    label: str
-    before: str
-    after: str
-    share_pct: float | None = None
-    """By how much a number moved, in per cent of what it was."""
-
-    def words(self) -> str:
-        """Say it: 'bus B2: greatest three-phase fault current up 25 % (20 kA to 25 kA)'."""
-        of = f"{self.subject} {self.name}: " if self.subject != "motor" else f"{self.name}: "
-        if self.share_pct is None:
-            told = f" ({self.before} to {self.after})" if self.before else f" {self.after}"
-        else:
-            way = "up" if self.share_pct > 0 else "down"
-            told = f" {way} {_share(self.share_pct)} ({self.before} to {self.after})"
-        return f"{of if self.name else ''}{self.label}{told}"
-
-
-def _share(share_pct: float) -> str:
-    size = abs(share_pct)
-    return f"{size:.0f} %" if size >= 10 else f"{size:.2g} %"
-
-
-Chain = tuple[Step, ...]
-"""From the changed datum to the quantity that moved."""
-
-
-def chain_words(chain: Chain) -> list[str]:
-    """Write the steps of a chain, those left out that only hand a value on."""
-    shown = [
-        step
-        for place, step in enumerate(chain)
-        if not place or (step.before, step.after) != (chain[place - 1].before, chain[place - 1].after)
-    ]
-    return [step.words() for step in shown]
 
 
 class Chains:
@@ -204,7 +159,7 @@ class Chains:
         through = list(self._through(names, child, subject, deciding.among(members)))
         yield from through or self._through(names, child, subject, members)
 
-    def _through(self, names: list[str], child: str, subject: str, members: _Members) -> Iterator[Chain]:
+    def _through(self, names: list[str], child: str, subject: str, members: Members) -> Iterator[Chain]:
         for name in names:
             for member in members.both:
                 yield from self._seen_from(name, child, member)
@@ -214,10 +169,10 @@ class Chains:
         for member in members.went:
             yield self._gone(child, subject, member)
 
-    def _deciding(self, node: Call, child: str, subject: str, row: int) -> _Deciding:
+    def _deciding(self, node: Call, child: str, subject: str, row: int) -> Deciding:
         """Give the child rows that decided: before (as a row before) and after."""
         old = int(self.pair.row_before(subject)[row])
-        return _Deciding(
+        return Deciding(
             self._decider(0, self.pair.before.workings, node, subject, old),
             self._decider(1, self.pair.after.workings, node, subject, row),
             self.pair.as_after(child, self._decider(0, self.pair.before.workings, node, subject, old)),
@@ -241,7 +196,7 @@ class Chains:
             return (self._link_step(child, subject, now),)
         return (self._row_step(child, member_before, "removed"),)
 
-    def _members(self, child: str, subject: str, row: int) -> _Members:
+    def _members(self, child: str, subject: str, row: int) -> Members:
         """Give the child rows of a row: there on both sides, come, and gone (these as rows before)."""
         at_after = self.pair.after.fleet.parent_rows(child, subject)
         at_before = self.pair.before.fleet.parent_rows(child, subject)
@@ -252,7 +207,7 @@ class Chains:
         both = [member for member in now.tolist() if member in earlier]
         came = [member for member in now.tolist() if member not in earlier]
         went = [member for at, member in earlier.items() if at < 0 or at not in set(both)]
-        return _Members(both, came, went)
+        return Members(both, came, went)
 
     def _of_link(self, subject: str, home: str, row: int, was: int, now: int) -> Iterator[Chain]:
         """A row points elsewhere: because it says so, or because what it points to came or went."""
@@ -298,45 +253,3 @@ class Chains:
     @staticmethod
     def _starts_step(change: StartsChange) -> Step:
         return Step("motor", change.motor, "starts", "recorded starts", "", change.words())
-
-
-@dataclass(frozen=True, slots=True)
-class _Members:
-    """Child rows there on both sides and come (as rows after), and gone (as rows before)."""
-
-    both: list[int]
-    came: list[int]
-    went: list[int]
-
-
-@dataclass(frozen=True, slots=True)
-class _Deciding:
-    """The child row that decided before (as a row before, and as a row after) and the one after."""
-
-    before: int
-    after: int
-    before_as_after: int
-
-    def among(self, members: _Members) -> _Members:
-        """Keep of some members those that decided."""
-        told = {self.after, self.before_as_after} - {NO_ROW}
-        return _Members(
-            [member for member in members.both if member in told],
-            [member for member in members.came if member == self.after],
-            [member for member in members.went if member == self.before],
-        )
-
-
-def best(chains: Iterable[Chain]) -> tuple[Chain, ...]:
-    """Keep for each root the shortest chain, roots of fewest steps first."""
-    shortest: dict[Step, Chain] = {}
-    for chain in chains:
-        known = shortest.get(chain[0])
-        if known is None or (len(chain), _names(chain)) < (len(known), _names(known)):
-            shortest[chain[0]] = chain
-    ordered = sorted(shortest.values(), key=lambda chain: (len(chain), _names(chain)))
-    return tuple(ordered[:MOST_CHAINS])
-
-
-def _names(chain: Chain) -> tuple[tuple[str, str, str], ...]:
-    return tuple((step.subject, step.name, step.quantity) for step in chain)

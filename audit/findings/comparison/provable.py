@@ -12,9 +12,10 @@ from audit.checks.entry import Severity
 from audit.checks.verdicts import BREACH, MEETS, UNPROVEN, VERDICT_NAMES, data_lacking
 from audit.findings.collect import NOT_CALCULABLE, label_of
 from audit.findings.comparison.alignment import Pair
-from audit.findings.comparison.chains import Chain, Chains
+from audit.findings.comparison.chains import Chains
 from audit.findings.comparison.changes import Changes
 from audit.findings.comparison.moves import Move, outcomes_by_key
+from audit.findings.comparison.steps import Chain
 
 _SETTLED = (VERDICT_NAMES[MEETS], VERDICT_NAMES[BREACH])
 _OPEN = VERDICT_NAMES[UNPROVEN]

@@ -8,9 +8,10 @@ from dataclasses import dataclass
 from audit.derivation.recipes import AUDIT_DATE
 from audit.expression.text import plain_number
 from audit.findings.comparison.alignment import Pair
-from audit.findings.comparison.chains import Chain, Chains, Step, chain_words
+from audit.findings.comparison.chains import Chains
 from audit.findings.comparison.changes import Changes
 from audit.findings.comparison.moves import Move
+from audit.findings.comparison.steps import Chain, Step, chain_words
 
 
 @dataclass(frozen=True, slots=True)

@@ -10,10 +10,10 @@ from typing import Any
 from audit.cautions import CAUTIONS
 from audit.findings.audit import Audit
 from audit.findings.comparison import Comparison
-from audit.findings.comparison.chains import Chain, chain_words
 from audit.findings.comparison.changes import Change
 from audit.findings.comparison.provable import ProofChange
 from audit.findings.comparison.standing import FindingChange
+from audit.findings.comparison.steps import Chain, chain_words
 from audit.findings.comparison.touched import Touched
 from audit.fleet.addresses import Place
 from audit.report.record.parts import tool_version

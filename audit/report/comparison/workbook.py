@@ -10,10 +10,10 @@ from openpyxl.cell import Cell
 from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.findings.comparison import Comparison
-from audit.findings.comparison.chains import chain_words
 from audit.findings.comparison.changes import Change
 from audit.findings.comparison.looked_at import LookedAt
 from audit.findings.comparison.standing import FindingChange
+from audit.findings.comparison.steps import chain_words
 from audit.fleet.addresses import Place
 from audit.report.comparison.cover import write_cover
 from audit.report.workbook.sheets.layout import FILLS, LETTERS, fill, new_sheet, page, table, title

@@ -13,11 +13,11 @@ from rich.text import Text
 
 from audit.cautions import SHORT_CAUTION
 from audit.findings.comparison import Comparison
-from audit.findings.comparison.chains import Chain, chain_words
 from audit.findings.comparison.changes import Change
 from audit.findings.comparison.looked_at import BY_HAND, LookedAt
 from audit.findings.comparison.provable import ProofChange
 from audit.findings.comparison.standing import FindingChange
+from audit.findings.comparison.steps import Chain, chain_words
 from audit.findings.comparison.touched import Touched
 from audit.report.terminal.style import WIDE, counted, severity_word
 

@@ -7,9 +7,10 @@ from collections.abc import Callable
 from audit.findings.audit import Audit
 from audit.findings.comparison import Comparison, compare
 from audit.findings.comparison.alignment import Pair
-from audit.findings.comparison.chains import Chains, Step, best
+from audit.findings.comparison.chains import Chains
 from audit.findings.comparison.changes import Changes
 from audit.findings.comparison.moves import Move
+from audit.findings.comparison.steps import Step, best
 from audit.findings.comparison.touched import touched
 from tests.findings.comparison.conftest import MOTOR, RELAY, numbered, plant
 

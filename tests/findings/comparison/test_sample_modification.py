@@ -9,7 +9,7 @@ from datetime import date
 import pytest
 
 from audit.findings.comparison import Comparison, compare
-from audit.findings.comparison.chains import Chain
+from audit.findings.comparison.steps import Chain
 from audit.pipeline import audit_path
 from audit.rule_folder import sample_folder
 
