@@ -7,6 +7,7 @@ import json
 from collections.abc import Callable
 from datetime import date
 from pathlib import Path
+from typing import Any
 
 import numpy as np
 import pytest
@@ -23,7 +24,7 @@ from audit.report.record.values import from_runs, from_stepped_runs, runs, stepp
 from audit.report.record.write import write_record
 
 DAY = date(2026, 11, 30)
-Change = Callable[[dict[str, object]], None]
+Change = Callable[[dict[str, Any]], None]
 
 
 @pytest.fixture(scope="module")
@@ -92,9 +93,9 @@ def test_a_newer_record_is_refused_with_what_to_do(audit: Audit, tmp_path: Path)
 
 
 def test_a_record_of_version_one_is_read_without_values(audit: Audit, tmp_path: Path) -> None:
-    def older(content: dict[str, object]) -> None:
+    def older(content: dict[str, Any]) -> None:
         content["record_version"] = 1
-        for finding in content["findings"]:  # type: ignore[attr-defined]
+        for finding in content["findings"]:
             del finding["since"], finding["audits"]
 
     record = read_record(changed(audit, tmp_path, older))
