@@ -26,19 +26,23 @@ def with_unit(value: float, unit: Unit) -> str:
     return f"{plain_number(value)} {unit.symbol}".strip()
 
 
-def range_text(low: float | None, high: float | None, unit: Unit) -> str:
-    """Write a permissible range.
+def range_text(low: float | None, high: float | None, unit: Unit, *, beyond: bool = False) -> str:
+    """Write a permissible range; beyond a single end where that end itself does not do.
 
     >>> from audit.vocabulary.units import UNITS
     >>> range_text(1020.0, None, UNITS["a"]), range_text(None, None, UNITS["a"])
     ('1,020 A or more', '')
+    >>> range_text(0.0, None, UNITS["1"], beyond=True), range_text(None, -0.1, UNITS["s"])
+    ('above 0', 'none (would be -0.1 s)')
     """
     if low is None and high is None:
         return ""
     if high is None:
-        return f"{with_unit(low or 0.0, unit)} or more"
+        return f"above {with_unit(low or 0.0, unit)}" if beyond else f"{with_unit(low or 0.0, unit)} or more"
     if low is None:
-        return f"{with_unit(high, unit)} or less"
+        if high < 0 and unit in (UNITS["s"], UNITS["a"], UNITS["v"]):
+            return f"none (would be {with_unit(high, unit)})"
+        return f"below {with_unit(high, unit)}" if beyond else f"{with_unit(high, unit)} or less"
     if low == high:
         return with_unit(low, unit)
     if low > high:

@@ -50,7 +50,7 @@ class Reasons:
         """Give the value that is judged, and the same in words."""
         if requirement.kind == "must_be":
             on = code.present > 0
-            return on, self._switch_word(requirement, on)
+            return on, self.switch_word(requirement, on)
         quantity = self._quantity(requirement)
         if quantity is not None and quantity.kind != "number":
             text = self._trace.text_of(subject, code.row, quantity.name)
@@ -65,7 +65,7 @@ class Reasons:
         """Say what was found and what is wanted, with the numbers put in."""
         label = self.label(requirement, check)
         if requirement.kind == "must_be":
-            return f"{label}: {present_text}, wanted: {self._switch_word(requirement, requirement.text == 'on')}"
+            return f"{label}: {present_text}, wanted: {self.switch_word(requirement, requirement.text == 'on')}"
         if requirement.kind == "must_be_stated":
             return f"{label} is not stated"
         assert requirement.bound is not None
@@ -82,7 +82,7 @@ class Reasons:
     def _quantity(self, requirement: Requirement) -> Quantity | None:
         return self._workings.quantities.get(requirement.setting() or "")
 
-    def _switch_word(self, requirement: Requirement, on: bool) -> str:
+    def switch_word(self, requirement: Requirement, on: bool) -> str:
         """Settings are on or off; facts are so or not."""
         quantity = self._quantity(requirement)
         if quantity is None or quantity.role == "setting":

@@ -20,7 +20,7 @@ from audit.findings.past import identity_of
 from audit.findings.places import motor_row_of, place_of
 from audit.findings.reasons import Reasons
 from audit.fleet.column import NO_CELL
-from audit.vocabulary.units import DIMENSIONLESS
+from audit.vocabulary.units import DIMENSIONLESS, Unit
 
 
 class FindingRenderer:
@@ -92,7 +92,7 @@ class FindingRenderer:
             unit=unit.symbol,
             low=low,
             high=high,
-            range_text=requirement.text if requirement.kind == "must_be" else range_text(low, high, unit),
+            range_text=self._range_text(requirement, code, low, high, unit),
             low_set_by=low_by,
             high_set_by=high_by,
             range_state=state,
@@ -176,6 +176,14 @@ class FindingRenderer:
             low = code.low if code.low == code.low else low
             high = code.high if code.high == code.high else high
         return low, high, low_by, high_by, ", ".join(state)
+
+    def _range_text(
+        self, requirement: Requirement, code: FindingCode, low: float | None, high: float | None, unit: Unit
+    ) -> str:
+        if requirement.kind == "must_be":
+            return self._reasons.switch_word(requirement, requirement.text == "on")
+        ends = {"above": low == code.low, "below": high == code.high}
+        return range_text(low, high, unit, beyond=ends.get(requirement.kind, False))
 
     def _set_by(self, band: SettingRange, row: int) -> tuple[str, str]:
         names = []

@@ -56,6 +56,6 @@ def print_complaints(audit: Audit, console: Console) -> None:
         print_heading(console, f"Asked · {asked}; the values concerned are withheld")
         for question in audit.fleet.questions[:MOST_COMPLAINTS]:
             place = " › ".join(part for part in (question.file, question.sheet, question.cell) if part)
-            console.print(Padding(Text(f"{place}: {question.about} {question.ask}".strip()), (0, 0, 0, 2)))
+            console.print(Padding(Text(f"{place}: {question.about}. {question.ask}"), (0, 0, 0, 2)))
         if len(audit.fleet.questions) > MOST_COMPLAINTS:
             console.print(f"  … and {len(audit.fleet.questions) - MOST_COMPLAINTS:,} more, see 'motor-audit columns'")

@@ -37,4 +37,4 @@ def print_reading(gathered: Gathered, console: Console) -> None:
     )
     for question in gathered.questions:
         place = " › ".join(part for part in (question.file, question.sheet, question.cell) if part)
-        console.print(Text(f"asked: {place}: {question.about} {question.ask}"))
+        console.print(Text(f"asked: {place}: {question.about}. {question.ask}"))
