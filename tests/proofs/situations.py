@@ -24,6 +24,7 @@ def situations_site() -> Site:
         _a_bare_delay,
         _a_voltage_level_without_full_load_currents,
         _an_efficiency_class_not_known,
+        _settings_that_were_not_exported,
     ):
         change(site)
     return site
@@ -111,3 +112,12 @@ def _a_voltage_level_without_full_load_currents(site: Site) -> None:
 
 def _an_efficiency_class_not_known(site: Site) -> None:
     site.motor("P-170A").pop("efficiency_class")
+
+
+def _settings_that_were_not_exported(site: Site) -> None:
+    site.relay_of("BC-401").pop("thermal_trip_class")
+    site.relay_of("P-115A").pop("short_circuit_trip_delay_s")
+    # so low that only a long delay would let the start through, and the delay is not known
+    site.relay_of("KM-202")["differential_start_pickup_a"] = 2.0
+    site.relay_of("KM-202").pop("differential_start_delay_s")
+    site.relay_of("KM-202").pop("differential_run_delay_s")
