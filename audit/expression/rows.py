@@ -182,6 +182,13 @@ def greatest_robust_score(values: list[Floats], parent: Integers, parents: int) 
     return greatest([score], parent, parents)
 
 
+def _to_five_figures(number: Floats) -> Floats:
+    # a figure written as a secondary value or a multiple comes back with the rounding of its writing
+    with np.errstate(divide="ignore", invalid="ignore"):
+        step = 10.0 ** (np.floor(np.log10(np.abs(number))) - 4)
+        return np.where(number == 0, 0.0, np.round(number / step) * step)
+
+
 def greatest_spread_of_copies(values: list[Floats], parent: Integers, parents: int) -> tuple[Floats, Integers]:
     """Among child rows (three or more) that share one first value: greatest ratio of their second values.
 
@@ -190,7 +197,7 @@ def greatest_spread_of_copies(values: list[Floats], parent: Integers, parents: i
     >>> result.item(), deciding.item()
     (3.0, 0)
     """
-    setting, size = np.round(counted([values[0], *values[2:]]), 6), values[1]
+    setting, size = _to_five_figures(counted([values[0], *values[2:]])), values[1]
     usable = np.flatnonzero((parent >= 0) & ~np.isnan(setting) & ~np.isnan(size) & (size > 0))
     order = usable[np.lexsort((size[usable], setting[usable], parent[usable]))]
     fresh = np.ones(len(order), dtype=bool)

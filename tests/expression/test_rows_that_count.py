@@ -55,7 +55,8 @@ def test_copies_count_from_three_on_and_only_within_one_group():
 
 
 def test_a_copy_survives_the_rounding_of_a_conversion():
-    pickup = np.array([600.0, 600.0000001, 599.9999999])
+    # written to seven figures, as multiples and secondary values are
+    pickup = np.array([600.0, 600.00004, 599.99996])
     spread, _ = rows.greatest_spread_of_copies([pickup, np.array([100.0, 150.0, 300.0])], np.zeros(3, np.int64), 1)
     assert spread.tolist() == [3.0]
 

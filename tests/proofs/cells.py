@@ -4,8 +4,8 @@ from __future__ import annotations
 
 import csv
 import shutil
-from collections.abc import Callable, Iterator
-from dataclasses import dataclass
+from collections.abc import Callable, Iterator, Mapping
+from dataclasses import dataclass, replace
 from pathlib import Path
 
 import numpy as np
@@ -21,15 +21,16 @@ class Column:
     """The cells of one column of a sheet, in rows that are about a motor, a relay, a bus or a start."""
 
     file: str
-    sheet: str
-    header: str
-    """All words above the first such row, from top to bottom."""
-    keys: list[str]
-    """What each row is about: the text of its first cell."""
+    head: list[object]
+    """The cells above the first such row, from top to bottom: titles, headers, units."""
     values: list[object]
 
+    def says(self, words: str) -> bool:
+        """Tell whether a cell above the rows holds these words."""
+        return any(isinstance(cell, str) and words in cell for cell in self.head)
 
-Change = Callable[[Column], list[object]]
+
+Change = Callable[[Column], Column]
 Grid = list[list[object]]
 
 
@@ -51,13 +52,13 @@ def change_workbooks(site: Site, source: Path, target: Path, change: Change) -> 
             workbook = load_workbook(path)
             for sheet in workbook.worksheets:
                 grid = [[cell.value for cell in row] for row in sheet.iter_rows()]
-                for row, place, value in _changed(path.name, sheet.title, grid, names, change):
+                for row, place, value in _changed(path.name, grid, names, change):
                     sheet.cell(row + 1, place + 1).value = value  # type: ignore[union-attr] # no merged cells in data
             workbook.save(target / path.name)
         elif path.suffix == ".csv" and path.name.startswith("start_records"):
             with path.open(encoding="utf-8", newline="") as file:
                 grid = [[_typed(text) for text in row] for row in csv.reader(file)]
-            for row, place, value in _changed(path.name, "", grid, names, change):
+            for row, place, value in _changed(path.name, grid, names, change):
                 grid[row][place] = value
             with (target / path.name).open("w", encoding="utf-8", newline="") as file:
                 csv.writer(file, lineterminator="\n").writerows(grid)
@@ -75,42 +76,41 @@ def _typed(text: str) -> object:
         return text
 
 
-def _changed(
-    file: str, sheet: str, grid: Grid, names: set[str], change: Change
-) -> Iterator[tuple[int, int, object]]:
+def _changed(file: str, grid: Grid, names: set[str], change: Change) -> Iterator[tuple[int, int, object]]:
     rows = [row for row, cells in enumerate(grid) if cells and str(cells[0]) in names]
     if not rows:
         return
-    keys = [str(grid[row][0]) for row in rows]
-    for place in range(1, len(grid[0])):
-        above = (grid[row][place] for row in range(rows[0]))
-        header = " ".join(str(words) for words in above if words is not None)
-        values = [grid[row][place] for row in rows]
-        for row, old, new in zip(rows, values, change(Column(file, sheet, header, keys, values)), strict=True):
-            if new is not old:
-                yield row, place, new
+    above = list(range(rows[0]))
+    for place in range(1, len(grid[rows[0]])):
+        old = Column(file, [_at(grid, row, place) for row in above], [_at(grid, row, place) for row in rows])
+        new = change(old)
+        for row, was, now in zip((*above, *rows), (*old.head, *old.values), (*new.head, *new.values), strict=True):
+            if now is not was:
+                yield row, place, now
 
 
-def is_list_of_settings(column: Column) -> bool:
-    """Tell whether a sheet has a row a setting, where only the values may be changed."""
-    return column.file == "relay_settings_lv_mcc.xlsx"
+def _at(grid: Grid, row: int, place: int) -> object:
+    return grid[row][place] if place < len(grid[row]) else None
+
+
+def only_values(column: Column) -> bool:
+    """Tell whether a column may be changed: in a list with a row a setting, only the values may."""
+    return column.file != "relay_settings_lv_mcc.xlsx" or column.says("Value")
 
 
 class Gaps:
     """Blanks a share of the cells, chosen by a seed."""
 
-    def __init__(self, seed: int, share: float, of_buses: float | None = None) -> None:
+    def __init__(self, seed: int, share: float) -> None:
         self.random = np.random.default_rng(seed)
         self.share = share
-        self.of_buses = share if of_buses is None else of_buses
 
-    def __call__(self, column: Column) -> list[object]:
+    def __call__(self, column: Column) -> Column:
         """Give a column with gaps."""
-        share = self.of_buses if column.file == "bus_list.xlsx" else self.share
-        gone = self.random.uniform(size=len(column.values)) < share
-        if is_list_of_settings(column) and column.header.rpartition(" ")[2] != "Value":
-            return column.values
-        return [None if lost else value for value, lost in zip(column.values, gone, strict=True)]
+        gone = self.random.uniform(size=len(column.values)) < self.share
+        if not only_values(column):
+            return column
+        return replace(column, values=[None if lost else v for v, lost in zip(column.values, gone, strict=True)])
 
 
 class Disturbed:
@@ -120,22 +120,50 @@ class Disturbed:
         self.random = np.random.default_rng(seed)
         self.share = share
 
-    def __call__(self, column: Column) -> list[object]:
+    def __call__(self, column: Column) -> Column:
         """Give a disturbed column."""
-        if is_list_of_settings(column) and column.header.rpartition(" ")[2] != "Value":
-            return column.values
         hit = self.random.uniform(size=len(column.values)) < self.share
         factors = self.random.choice((3.0, 1 / 3), size=len(column.values))
-        return [
-            self._other(column, row, value, float(factor)) if struck else value
-            for row, (value, struck, factor) in enumerate(zip(column.values, hit, factors, strict=True))
+        if not only_values(column):
+            return column
+        before = [column.values[-1], *column.values[:-1]] if column.file == "motor_list.xlsx" else column.values
+        values = [
+            _other(value, above, float(factor)) if struck else value
+            for value, above, struck, factor in zip(column.values, before, hit, factors, strict=True)
         ]
+        return replace(column, values=values)
 
-    def _other(self, column: Column, row: int, value: object, factor: float) -> object:
-        if isinstance(value, bool | int | float):
-            return float(f"{value * factor:.4g}")
-        if isinstance(value, str) and value in SWAPPED:
-            return SWAPPED[value]
-        if isinstance(value, str) and not is_list_of_settings(column):
-            return column.values[row - 1]
-        return value
+
+def _other(value: object, above: object, factor: float) -> object:
+    if isinstance(value, bool | int | float):
+        return float(f"{value * factor:.4g}")
+    if isinstance(value, str):
+        return SWAPPED.get(value, above)
+    return value
+
+
+class Restated:
+    """Writes the numbers of lists in other units."""
+
+    def __init__(self, units: Mapping[str, tuple[str, float]]) -> None:
+        self.units = units
+        """For each unit another one, and how many of it are one of the first."""
+
+    def __call__(self, column: Column) -> Column:
+        """Give the column in its other unit; what has no plain number, as ratios, stays as it is."""
+        for place, cell in enumerate(column.head):
+            for unit, (other, factor) in self.units.items():
+                for was in (f"[{unit}]", f"({unit})"):
+                    if isinstance(cell, str) and cell.endswith(was) and not column.says("Ratio"):
+                        head = [*column.head]
+                        head[place] = cell.removesuffix(was) + was.replace(unit, other)
+                        return replace(column, head=head, values=[_times(value, factor) for value in column.values])
+        return column
+
+
+def _times(value: object, factor: float) -> object:
+    if isinstance(value, int | float):
+        return float(f"{value * factor:.12g}")
+    if isinstance(value, str) and value[:1].isdigit():
+        return "/".join(f"{float(part) * factor:.12g}" for part in value.split("/"))
+    return value

@@ -9,6 +9,7 @@ from tests.sites.plant import Site, number
 from tests.sites.tarnholt.sound import sound_site
 from tests.sites.writing.site_folder import write_site
 
+
 def situations_site() -> Site:
     """Give the sound works with what stands in each function below."""
     site = sound_site()
