@@ -81,12 +81,13 @@ def explain(
     tag: Annotated[str, typer.Argument(metavar="TAG", help="The motor.")],
     check: Annotated[str | None, typer.Argument(metavar="CHECK", help="One check; default all that apply.")] = None,
     rules: RulesFolder = None,
+    show_all: Annotated[bool, typer.Option("--all", help="In full also what is plainly met.")] = False,
     on: Annotated[str | None, typer.Option("--on", metavar="DAY", help="The day of the audit; default today.")] = None,
 ) -> None:
     """Print a motor's calculation sheet: data, formulas with numbers, ranges, verdicts, sources, assumptions."""
     from audit.commands.explain import run_explain
 
-    raise typer.Exit(run_explain(fleet, tag, check, rules=rules, audited_on=_day(on)))
+    raise typer.Exit(run_explain(fleet, tag, check, rules=rules, audited_on=_day(on), everything=show_all))
 
 
 @app.command(short_help="Compare two states of a fleet, or suppose a change.")
@@ -186,8 +187,11 @@ def main() -> None:
     """Run the command line; wrong input gives one clear message on stderr and exit 2."""
     try:
         app()
-    except (Refusal, OSError) as error:
+    except Refusal as error:
         print(f"motor-audit: {error}", file=sys.stderr)
+        raise SystemExit(2) from error
+    except OSError as error:
+        print(f"motor-audit: {error.filename or 'a file'}: {error.strerror or error}", file=sys.stderr)
         raise SystemExit(2) from error
 
 

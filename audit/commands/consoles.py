@@ -1,4 +1,4 @@
-"""Where tables and progress go: to the terminal, or to stderr when stdout is piped."""
+"""Where tables and progress go: tables to stdout, so that they can be kept in a file; progress to stderr."""
 
 from __future__ import annotations
 
@@ -11,10 +11,9 @@ NARROWEST = 60
 
 
 def table_console() -> Console:
-    """Give the console for tables: stdout on a terminal, stderr when stdout is piped."""
-    stream = sys.stdout if sys.stdout.isatty() else sys.stderr
+    """Give the console for tables; a command that prints JSON on stdout prints no tables."""
     width = int(os.environ["COLUMNS"]) if os.environ.get("COLUMNS", "").isdigit() else None
-    return Console(file=stream, highlight=False, width=max(width, NARROWEST) if width else None, soft_wrap=False)
+    return Console(file=sys.stdout, highlight=False, width=max(width, NARROWEST) if width else None, soft_wrap=False)
 
 
 def progress_console() -> Console:

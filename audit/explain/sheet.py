@@ -6,7 +6,7 @@ from collections.abc import Iterator
 
 from audit.cautions import CAUTIONS
 from audit.checks.ranges import NO_CHECK
-from audit.checks.verdicts import UNPROVEN, VERDICT_NAMES, Judged, Outcome, data_lacking
+from audit.checks.verdicts import MEETS, UNPROVEN, VERDICT_NAMES, Judged, Outcome, data_lacking
 from audit.checks.wording import requirement_in_words
 from audit.derivation.trace import Step, Trace, shown_number
 from audit.expression.nodes import Node, names_in
@@ -40,8 +40,8 @@ class CalculationSheet:
             raise Refusal(f"'{tag}' is not a motor of {self.audit.fleet.site}{nearest(tag, keys)}.")
         return row
 
-    def lines(self, tag: str, check_name: str | None = None) -> Iterator[str]:
-        """Give the sheet of one motor line by line: all checks that apply, or one."""
+    def lines(self, tag: str, check_name: str | None = None, *, everything: bool = False) -> Iterator[str]:
+        """Give the sheet of one motor line by line: what is not plainly met, all checks that apply, or one."""
         row = self.motor_row(tag)
         outcomes = [outcome for outcome in self.audit.outcomes if outcome.check.stage == "rows"]
         if check_name is not None:
@@ -54,6 +54,7 @@ class CalculationSheet:
         yield f"audited on {self.audit.audited_on.isoformat()}"
         yield from (f"caution: {caution}" for caution in CAUTIONS)
         yield ""
+        met: list[str] = []
         set_aside: list[str] = []
         for outcome in outcomes:
             at = self._row_of(outcome, row)
@@ -62,8 +63,13 @@ class CalculationSheet:
             if outcome.verdict[at] == 0 and check_name is None:
                 set_aside.append(outcome.check.key)
                 continue
+            if outcome.verdict[at] == MEETS and not outcome.provisional[at] and not everything and check_name is None:
+                met.append(f"{outcome.check.function} {outcome.check.key}")
+                continue
             yield from self.check_lines(outcome, at)
             yield ""
+        if met:
+            yield f"meets, on data stated or recorded: {', '.join(met)}"
         if set_aside:
             yield f"not applicable to this motor: {', '.join(set_aside)}"
 
@@ -82,6 +88,8 @@ class CalculationSheet:
         condition = render(check.when, self._label, self.trace.reads)
         applies = {NO: "no", UNKNOWN: "not known", YES: "yes"}[int(outcome.applies[row])]
         yield f"  applies when: {condition}: {applies}"
+        if outcome.applies[row] == NO:
+            return
         for judged in outcome.judged:
             yield from self._requirement_lines(outcome, judged, row)
         seen: set[tuple[str, int]] = set()

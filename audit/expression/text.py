@@ -6,6 +6,8 @@ from collections.abc import Callable
 
 from audit.expression.nodes import Arithmetic, Call, Compare, Join, Name, Negative, Node, Not, Number, Truth
 
+NOT_KNOWN = "not known"
+EITHER_SERVES = ("greater", "lesser", "first_known")
 Render = Callable[[str], str]
 _SIGNS = {"*": "×", "/": "/", "+": "+", "-": "−", "<=": "≤", ">=": "≥", "==": "=", "!=": "≠", "<": "<", ">": ">"}
 _STRENGTH = {"+": 1, "-": 1, "*": 2, "/": 2}
@@ -58,7 +60,12 @@ def render(node: Node, name_of: Render, words: Callable[[str], str] = lambda fun
             )
         case Call(function, operands):
             inner = [render(operand, name_of, words) for operand in operands]
-            return f"{words(function)} ({'; '.join(inner)})"
+            if function in EITHER_SERVES:
+                # what is not known had no say where another operand was
+                inner = [text for text in inner if NOT_KNOWN not in text] or inner
+            return (
+                inner[0] if len(inner) == 1 and function in EITHER_SERVES else f"{words(function)} ({'; '.join(inner)})"
+            )
 
 
 def _wrapped(node: Node, operator: str, name_of: Render, words: Callable[[str], str], *, right_side: bool) -> str:

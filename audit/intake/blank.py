@@ -46,6 +46,25 @@ _HOW = (
 )
 
 
+EXAMPLES: dict[str, str | float] = {
+    "service": "wash water pump", "area": "wash plant", "bus": "MCC-1", "cubicle": "3F", "relay": "R-101",
+    "rated_power_kw": 75, "rated_voltage_v": 400, "frequency_hz": 50, "poles": 4, "rated_speed_rpm": 1482,
+    "full_load_a": 133, "efficiency_pct": 94.5, "power_factor": 0.86, "locked_rotor_a": 900, "service_factor": 1,
+    "safe_stall_hot_s": 12, "safe_stall_cold_s": 18, "starting_method": "direct on line",
+    "switching_device": "breaker", "overload_device": "motor relay", "driven_machine": "pump", "must_run": "no",
+    "ct_primary_a": 200, "ct_secondary_a": 1, "cable_size_mm2": 70, "cable_length_m": 85, "cable_conductor": "copper",
+    "relay_full_load_a": 133, "relay_ct_primary_a": 200, "relay_ct_secondary_a": 1,
+    "settings_export_date": "2026-03-14",
+    "short_circuit_trip_on": "yes", "short_circuit_trip_pickup_a": 1600, "short_circuit_trip_delay_s": 0.05,
+    "thermal_trip_on": "yes", "thermal_pickup_a": 140, "heating_time_constant_s": 900,
+    "start_timer_on": "yes", "start_timer_delay_s": 6, "unbalance_trip_on": "yes", "unbalance_trip_pickup_pct": 20,
+    "unbalance_trip_delay_s": 4, "unbalance_base": "full load", "bus_nominal_v": 400, "bus_frequency_hz": 50,
+    "fault_max_ka": 25, "fault_min_ka": 12, "fault_x_r_ratio": 6, "earthing": "solid", "bus_clearing_time_s": 0.3,
+    "start_moment": "2026-03-14 06:20", "start_time_s": 3.4, "start_current_a": 810, "start_voltage_pct": 96,
+}  # fmt: skip
+"""An invented motor, for the example row."""
+
+
 def write_blank(directory: Path) -> list[Path]:
     """Write the intake workbook and an empty `fleet.toml` into a folder, which is made if need be.
 
@@ -180,20 +199,8 @@ def _spelled(choice: str) -> str:
 
 
 def _example(quantity: Quantity) -> str | float | None:
-    """Give an example of a plausible value; not a recommendation, and never read."""
-    if quantity.kind == "choice":
-        return _spelled(quantity.choices[0]) if quantity.choices else None
-    if quantity.kind == "truth":
-        return "no"
-    if quantity.kind == "date":
-        return "2026-03-14"
-    if quantity.kind == "text":
-        return "text"
-    if quantity.plausible is None:
-        return None
-    low, high = quantity.plausible
-    middle = (max(low, high / 1e4) * high) ** 0.5
-    return float(f"{middle:.2g}")
+    """Give what stands in the example row: an invented motor's main data; not a recommendation, and never read."""
+    return EXAMPLES.get(quantity.name)
 
 
 def _validation(quantity: Quantity) -> DataValidation | None:

@@ -168,9 +168,9 @@ def test_one_unreadable_workbook_does_not_stop_the_others(
     site.mkdir()
     motors(site / "motors.xlsx", *GOOD)
     (site / "broken.xlsx").write_bytes(b"PK\x03\x04 cut off")
-    status, _, message = run(capsys, monkeypatch, "audit", str(site), "--out", str(tmp_path / "out"))
+    status, printed, _ = run(capsys, monkeypatch, "audit", str(site), "--out", str(tmp_path / "out"))
     assert status == 0
-    assert "broken.xlsx" in message
+    assert "broken.xlsx" in printed
     assert (tmp_path / "out" / "findings.json").exists()
 
 

@@ -7,7 +7,7 @@ from pathlib import Path
 
 import pytest
 
-from audit.intake.recognition.dictionary import TABLES
+from audit.intake.gathered import TABLES
 from audit.intake.recognition.matching import match_header
 from audit.vocabulary.quantities import vocabulary
 from audit.vocabulary.spellings import UnitReading

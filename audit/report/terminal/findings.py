@@ -18,6 +18,10 @@ from audit.report.terminal.since import standing_word
 from audit.report.terminal.style import MEANING, STYLE, WIDE, counted, severity_word
 
 MOST_LINES = 10
+STATES_OF_RANGES = (
+    "A permissible range is moving where an end depends on another setting, provisional where a check that sets an end "
+    "is unproven or rests on an assumption. It is not an instruction: pickup and delay act together."
+)
 MOST_NAMES = 12
 
 
@@ -35,6 +39,9 @@ def print_findings(audit: Audit, console: Console, *, everything: bool = False) 
         codes = [code for code in audit.counted() if audit.outcomes[code.outcome].check.severity == severity]
         for _, group in groupby(codes, key=lambda code: audit.outcomes[code.outcome].check.key):
             _print_check([renderer.finding(code) for code in group], console, everything=everything)
+    if any(by_severity.values()):
+        console.print()
+        console.print(Text(STATES_OF_RANGES))
 
 
 def _print_check(findings: list[Finding], console: Console, *, everything: bool) -> None:
