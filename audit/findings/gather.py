@@ -62,9 +62,7 @@ def breaches(outcomes: Sequence[Outcome], group: str = "") -> list[FindingCode]:
     return codes
 
 
-def of_ranges(
-    outcome: int, check: Check, ranges: Mapping[str, SettingRange], workings: Workings
-) -> list[FindingCode]:
+def of_ranges(outcome: int, check: Check, ranges: Mapping[str, SettingRange], workings: Workings) -> list[FindingCode]:
     """Give the code of each range in which a check of ranges finds something."""
     codes = []
     for place, band in enumerate(ranges.values()):
