@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Collection, Mapping
 from dataclasses import dataclass, field
 from pathlib import Path
 from typing import Any
@@ -102,6 +102,7 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
         evidence[pack] = tuple(entries.pop("in_scope_with", ()))
         checks += _read_checks(path, pack, entries)
     changes: list[SiteChange] = []
+    names = {check.name for check in checks}
     if site_rules is not None:
         limits, checks, changes = _site(site_rules, limits, checks)
         more, more_derived = read_recipes([site_rules / "derived"])
@@ -113,8 +114,9 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
     _refuse_clashes(limits, recipes, checks)
     meanings = lookup_for(quantities, limits)
     check_recipes(recipes, meanings, FUNCTIONS)
+    names |= {check.name for check in checks}
     for check in checks:
-        _check_names_and_units(check, meanings, quantities, limits, checks)
+        _check_names_and_units(check, meanings, quantities, limits, names)
     for pack, names in evidence.items():
         for name in names:
             if name not in quantities:
@@ -138,12 +140,12 @@ def _site(
     result, kept = dict(limits), list(checks)
     for path in sorted(folder.glob("*.toml")):
         entries = read_rule_file(path)
-        overrides: dict[str, Any] = entries.pop("limits", {})
+        overrides = _table(path, entries, "limits")
         result = override_limits(result, path, overrides)
         for name, entry in overrides.items():
             was, now = f"{limits[name].value:g}", f"{result[name].value:g}"
             changes.append(SiteChange("limit", name, was, now, str(entry["reason"])))
-        for name, reason in entries.pop("switched_off", {}).items():
+        for name, reason in _table(path, entries, "switched_off").items():
             if not any(check.name == name for check in kept):
                 known = sorted({check.name for check in kept})
                 raise BadRule(path.name, "switched_off", f"'{name}' is not a known check{nearest(name, known)}")
@@ -160,6 +162,13 @@ def _site(
             kept += added
             changes.append(SiteChange("check added", name, "", added[0].severity, added[0].why))
     return result, kept, changes
+
+
+def _table(path: Path, entries: dict[str, Any], name: str) -> dict[str, Any]:
+    table = entries.pop(name, {})
+    if not isinstance(table, dict):
+        raise BadRule(path.name, name, "this is a table of names", f"Write [{name}] and a line for each below it.")
+    return table
 
 
 def _refuse_clashes(limits: Mapping[str, Limit], recipes: Mapping[str, Recipe], checks: list[Check]) -> None:
@@ -182,7 +191,7 @@ def _check_names_and_units(
     meanings: Mapping[str, Meaning],
     quantities: Mapping[str, Quantity],
     limits: Mapping[str, Limit],
-    checks: list[Check],
+    known: Collection[str],
 ) -> None:
     checker = UnitCheck(meanings.get, meanings, FUNCTIONS)
 
@@ -204,8 +213,8 @@ def _check_names_and_units(
         if name not in quantities:
             raise BadRule(check.file, check.name, f"evidence '{name}' is not a known name{nearest(name, quantities)}")
     _check_slips(check, meaning, limits)
-    if check.unless_found is not None and not any(other.name == check.unless_found for other in checks):
-        known = [other.name for other in checks]
+    # a check that the site switched off is still known: it is never found
+    if check.unless_found is not None and check.unless_found not in known:
         raise BadRule(
             check.file, check.name, f"'{check.unless_found}' is not a check{nearest(check.unless_found, known)}"
         )

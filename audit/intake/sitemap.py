@@ -152,7 +152,7 @@ def load_site_map(folder: Path) -> SiteMap:
     try:
         text = path.read_text("utf-8-sig")
         entries = tomllib.loads(text)
-    except (tomllib.TOMLDecodeError, UnicodeDecodeError, OSError) as error:
+    except (tomllib.TOMLDecodeError, UnicodeDecodeError, OSError, RecursionError) as error:
         raise _wrong(f"it cannot be read: {error}", "a TOML file in UTF-8") from error
     return site_map(entries)
 

@@ -54,6 +54,8 @@ def read_rule_file(path: Path) -> dict[str, Any]:
         return tomllib.loads(path.read_text("utf-8"))
     except (tomllib.TOMLDecodeError, UnicodeDecodeError) as error:
         raise BadRule(path.name, "", f"the file is not valid TOML: {error}", "Correct it at that place.") from error
+    except RecursionError as error:
+        raise BadRule(path.name, "", "brackets are nested too deep", "Write the file in plain tables.") from error
 
 
 def _number(path: Path, name: str, value: object) -> float:
