@@ -102,7 +102,7 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
         evidence[pack] = tuple(entries.pop("in_scope_with", ()))
         checks += _read_checks(path, pack, entries)
     changes: list[SiteChange] = []
-    names = {check.name for check in checks}
+    known = {check.name for check in checks}
     if site_rules is not None:
         limits, checks, changes = _site(site_rules, limits, checks)
         more, more_derived = read_recipes([site_rules / "derived"])
@@ -114,9 +114,9 @@ def load_catalogue(site_rules: Path | None = None, rules: Path | None = None) ->
     _refuse_clashes(limits, recipes, checks)
     meanings = lookup_for(quantities, limits)
     check_recipes(recipes, meanings, FUNCTIONS)
-    names |= {check.name for check in checks}
+    known |= {check.name for check in checks}
     for check in checks:
-        _check_names_and_units(check, meanings, quantities, limits, names)
+        _check_names_and_units(check, meanings, quantities, limits, known)
     for pack, names in evidence.items():
         for name in names:
             if name not in quantities:
