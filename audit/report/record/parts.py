@@ -14,6 +14,7 @@ from audit.cautions import CAUTIONS
 from audit.checks.ranges import NO_CHECK
 from audit.findings.accepted import Accepted
 from audit.findings.audit import Audit
+from audit.findings.costs import costs_of_complaints
 from audit.findings.finding import Finding
 from audit.findings.render import FindingRenderer
 from audit.findings.trends import drifts
@@ -258,7 +259,8 @@ def per_check(audit: Audit) -> dict[str, dict[str, Any]]:
 
 def complaints(audit: Audit) -> Iterator[dict[str, Any]]:
     """Give what could not be used of the inputs."""
-    for item in audit.fleet.complaints:
+    costs = costs_of_complaints(audit)
+    for item, cost in zip(audit.fleet.complaints, costs, strict=True):
         yield {
             "weight": item.weight,
             "file": item.file,
@@ -270,6 +272,7 @@ def complaints(audit: Audit) -> Iterator[dict[str, Any]]:
             "quantity": item.quantity,
             "subject": item.subject,
             "key": item.key,
+            "costs": list(cost),
         }
 
 

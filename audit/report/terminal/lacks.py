@@ -9,6 +9,7 @@ from rich.text import Text
 
 from audit.checks.entry import SEVERITIES
 from audit.findings.audit import Audit
+from audit.findings.costs import costs_of_complaints
 from audit.report.terminal.style import LETTER, counted
 from audit.report.terminal.tables import print_heading, print_left_out
 
@@ -45,11 +46,14 @@ def print_data_to_collect(audit: Audit, console: Console) -> None:
 
 def print_complaints(audit: Audit, console: Console) -> None:
     """Print what of the inputs could not be used, worst first, and what is asked."""
-    complaints = sorted(audit.fleet.complaints, key=lambda item: ("stop", "withheld", "remark").index(item.weight))
+    pairs = zip(audit.fleet.complaints, costs_of_complaints(audit), strict=True)
+    weights = ("stop", "withheld", "remark")
+    complaints = sorted(pairs, key=lambda pair: (weights.index(pair[0].weight), -len(pair[1])))
     if complaints:
         print_heading(console, f"The inputs · {counted(len(complaints), 'complaint')}")
-        for item in complaints[:MOST_COMPLAINTS]:
-            console.print(Padding(Text(item.sentence()), (0, 0, 0, 2)))
+        for item, cost in complaints[:MOST_COMPLAINTS]:
+            leaves = f" Leaves unproven: {', '.join(cost)}." if cost else ""
+            console.print(Padding(Text(item.sentence() + leaves), (0, 0, 0, 2)))
         print_left_out(console, len(complaints), MOST_COMPLAINTS, "the workbook's data sheet")
     if audit.fleet.questions:
         asked = counted(len(audit.fleet.questions), "question")

@@ -8,6 +8,7 @@ from openpyxl.worksheet.worksheet import Worksheet
 
 from audit.checks.entry import SEVERITIES
 from audit.findings.audit import Audit
+from audit.findings.costs import costs_of_complaints
 from audit.report.workbook.sheets.layout import LETTERS, page, table, title
 
 MOST_NAMES = 40
@@ -57,15 +58,25 @@ def write_inputs(audit: Audit, sheet: Worksheet) -> None:
         sheet, "Inputs", "what could not be used of the workbooks, and what is asked; the values concerned are withheld"
     )
     complaints = [
-        [item.weight, item.file, item.sheet, item.cell, item.key, item.found, item.expected, item.advice]
-        for item in audit.fleet.complaints
-    ]
+        [
+            item.weight,
+            item.file,
+            item.sheet,
+            item.cell,
+            item.key,
+            item.found,
+            item.expected,
+            item.advice,
+            ", ".join(cost),
+        ]
+        for item, cost in zip(audit.fleet.complaints, costs_of_complaints(audit), strict=True)
+    ]  # fmt: skip
     questions = [
-        ["asked", item.file, item.sheet, item.cell, "", item.about, item.ask, ", ".join(item.answers)]
+        ["asked", item.file, item.sheet, item.cell, "", item.about, item.ask, ", ".join(item.answers), ""]
         for item in audit.fleet.questions
     ]
-    headings = ("kind", "file", "sheet", "cell", "row of", "found", "expected", "what to do")
-    table(sheet, row, headings, (10, 22, 16, 8, 14, 44, 40, 44), complaints + questions)
+    headings = ("kind", "file", "sheet", "cell", "row of", "found", "expected", "what to do", "leaves unproven")
+    table(sheet, row, headings, (10, 22, 16, 8, 14, 44, 40, 44, 40), complaints + questions)
     page(sheet, audit.fleet.site)
 
 
