@@ -26,6 +26,9 @@ def situations_site() -> Site:
         _a_voltage_level_without_full_load_currents,
         _an_efficiency_class_not_known,
         _settings_that_were_not_exported,
+        _data_that_nobody_has,
+        _earth_faults_on_solidly_earthed_boards,
+        _a_soft_start_that_may_be_bypassed,
     ):
         change(site)
     return site
@@ -41,8 +44,11 @@ def write_situations(folder: Path) -> None:
 
 
 def _reversed_after_the_rotation_check(site: Site) -> None:
-    site.motor("P-110A")["supply_reterminated_date"] = date(2026, 3, 2)
+    for tag in ("P-110A", "P-110B"):
+        site.motor(tag)["supply_reterminated_date"] = date(2026, 3, 2)
     site.relay_of("P-110A")["phase_sequence_trip_on"] = False
+    for setting in ("trip_on", "trip_pickup_pct", "trip_delay_s"):
+        site.relay_of("P-110B").pop(f"phase_sequence_{setting}")
 
 
 def _a_bus_without_motors(site: Site) -> None:
@@ -50,6 +56,9 @@ def _a_bus_without_motors(site: Site) -> None:
 
 
 def _too_much_current_through_the_core(site: Site) -> None:
+    site.buses.append({**site.bus("MCC-3B"), "bus_name": "MCC-3C"})
+    for datum in ("earth_fault_max_a", "earth_fault_min_a", "neutral_resistor_ohm"):
+        site.bus("MCC-3C").pop(datum, None)
     site.bus("MCC-3B")["earth_fault_max_a"] = 14.0
 
 
@@ -122,3 +131,31 @@ def _settings_that_were_not_exported(site: Site) -> None:
     site.relay_of("KM-202")["differential_start_pickup_a"] = 2.0
     site.relay_of("KM-202").pop("differential_start_delay_s")
     site.relay_of("KM-202").pop("differential_run_delay_s")
+
+
+def _data_that_nobody_has(site: Site) -> None:
+    for tag, datum in (
+        ("F-630", "speed_switch_delay_s"),
+        ("KM-201", "hot_limit_curve"),
+        ("KM-202", "stator_leads"),
+        ("F-370", "te_s"),
+        ("P-710A", "locked_rotor_a"),
+    ):
+        site.motor(tag).pop(datum)
+    # two CTs, and the relay does not say how many it takes to be there
+    site.motor("P-160A")["ct_count"] = 2.0
+    site.relay_of("P-160A").pop("relay_ct_count")
+
+
+def _earth_faults_on_solidly_earthed_boards(site: Site) -> None:
+    site.relay_of("P-140A")["earth_fault_trip_on"] = False
+    site.relay_of("P-140B")["earth_fault_trip_on"] = False
+    site.motor("P-140B").pop("switching_device")
+    site.relay_of("P-160B")["earth_fault_trip_pickup_a"] = 60.0
+    # the residual of a start needs a delay or a core-balance CT
+    site.relay_of("P-130A")["earth_fault_trip_delay_s"] = 0.0
+
+
+def _a_soft_start_that_may_be_bypassed(site: Site) -> None:
+    # the start at full voltage takes longer than the thermal element and the rotor bear
+    site.motor("P-190A").update(bypass_start_possible=True, stated_start_time_s=30.0)
