@@ -157,5 +157,5 @@ def _earth_faults_on_solidly_earthed_boards(site: Site) -> None:
 
 
 def _a_soft_start_that_may_be_bypassed(site: Site) -> None:
-    # the start at full voltage takes longer than the thermal element and the rotor bear
+    # carried to the full current, the start is longer than the thermal element lets it be
     site.motor("P-190A").update(bypass_start_possible=True, stated_start_time_s=30.0)
