@@ -142,7 +142,7 @@ def fill_in(source: Path, target: Path, filled: Mapping[str, Filled], change: Ca
         if row.deleted:
             gone.append(at)
         for name, value in row.cells.items():
-            sheet.cell(row=at, column=columns[name]).value = value  # type: ignore[assignment]
+            sheet.cell(row=at, column=columns[name]).value = value
         for name in row.struck:
             sheet.cell(row=at, column=columns[name]).font = Font(strike=True)
     for at in sorted(gone, reverse=True):

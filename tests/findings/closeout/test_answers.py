@@ -35,7 +35,7 @@ def setting(number: float, factor: float = 1.0, base: str = "") -> WrittenSettin
     ],
 )
 def test_a_value_keeps_its_number_and_the_unit_typed(typed: object, beside: str, number: float, unit: str) -> None:
-    answer = read_answer(ReturnedCell(typed), beside, DELAY, None)  # type: ignore[arg-type]
+    answer = read_answer(ReturnedCell(typed), beside, DELAY, None)
     assert (answer.kind, answer.number) == (AnswerKind.VALUE, number)
     assert answer.unit is not None
     assert answer.unit.unit == unit
@@ -49,7 +49,7 @@ def test_a_per_cent_cell_is_a_number_of_per_cent() -> None:
 
 @pytest.mark.parametrize("typed", ["ok", "done", "Done.", "as issued", "set", "n/a", "see report", True])
 def test_words_are_no_value(typed: object) -> None:
-    assert read_answer(ReturnedCell(typed), "s", DELAY, None).kind is AnswerKind.WORDS  # type: ignore[arg-type]
+    assert read_answer(ReturnedCell(typed), "s", DELAY, None).kind is AnswerKind.WORDS
 
 
 @pytest.mark.parametrize(
@@ -58,7 +58,7 @@ def test_words_are_no_value(typed: object) -> None:
      datetime(2026, 5, 1)],
 )  # fmt: skip
 def test_what_may_mean_several_things_is_asked(typed: object) -> None:
-    answer = read_answer(ReturnedCell(typed), "s", DELAY, None)  # type: ignore[arg-type]
+    answer = read_answer(ReturnedCell(typed), "s", DELAY, None)
     assert answer.kind is AnswerKind.ASKED
     assert answer.question
 

@@ -33,7 +33,7 @@ def work() -> list[WorkRow]:
 
 def returned(row: WorkRow, **cells: object) -> ReturnedRow:
     said = {"motor": row.finding.motor, "issued": 1080, "unit": "A", **cells}
-    named = {name: ReturnedCell(value) for name, value in said.items()}  # type: ignore[arg-type]
+    named = {name: ReturnedCell(value) for name, value in said.items()}
     return ReturnedRow(row.key, "Work!A1", named)
 
 

@@ -34,8 +34,8 @@ HOW_TO_FILL_IN = [
     ),
     (
         "the formulas",
-        "use common functions only and were tried in LibreOffice; for other programs they are valid by "
-        "the schema of the format.",
+        "use common functions only and were tried in LibreOffice; in other programs try one row before the sheet is "
+        "handed over.",
     ),
 ]
 _LINE = Side(style="thin", color="3B4A54")

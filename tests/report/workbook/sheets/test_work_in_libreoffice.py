@@ -57,7 +57,7 @@ class Sheet:
 
     def put(self, row: int, **cells: object) -> None:
         for name, value in cells.items():
-            self.sheet.cell(row=FIRST_ROW + row, column=NUMBER[name]).value = value  # type: ignore[assignment]
+            self.sheet.cell(row=FIRST_ROW + row, column=NUMBER[name]).value = value
 
     def get(self, row: int, name: str) -> object:
         return self.sheet.cell(row=FIRST_ROW + row, column=NUMBER[name]).value
