@@ -39,9 +39,11 @@ def test_the_second_year_says_what_is_new_and_what_was_cleared(run: Run, tmp_pat
     first = site(tmp_path / "first", 26, 900)
     second = site(tmp_path / "second", 20, 700)
     run("audit", first, "--out", tmp_path / "y1", "--on", "2025-11-30")
-    status, _, err = run("audit", second, "--out", tmp_path / "y2", "--on", "2026-11-30", "--previous", tmp_path / "y1")
+    status, printed, _ = run(
+        "audit", second, "--out", tmp_path / "y2", "--on", "2026-11-30", "--previous", tmp_path / "y1"
+    )
     assert status == 0
-    told = " ".join(err.split())
+    told = " ".join(printed.split())
     assert "Since the audit of 2025-11-30" in told
     assert "Settings that changed although no change is listed and no finding asked for it" in told
     record = json.loads((tmp_path / "y2" / "findings.json").read_text("utf-8"))
