@@ -53,7 +53,7 @@ def change_workbooks(site: Site, source: Path, target: Path, change: Change) -> 
             for sheet in workbook.worksheets:
                 grid = [[cell.value for cell in row] for row in sheet.iter_rows()]
                 for row, place, value in _changed(path.name, grid, names, change):
-                    sheet.cell(row + 1, place + 1).value = value  # type: ignore[union-attr] # no merged cells in data
+                    sheet.cell(row + 1, place + 1).value = value
             workbook.save(target / path.name)
         elif path.suffix == ".csv" and path.name.startswith("start_records"):
             with path.open(encoding="utf-8", newline="") as file:
